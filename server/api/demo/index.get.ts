@@ -1,0 +1,3 @@
+import { describeDemo } from '../../services/demo/describe-demo'
+
+export default publicRoute('GET /api/demo', { handle: ({ services }) => describeDemo(services) })

@@ -1,0 +1,3 @@
+import { listDock } from '../../services/lots/list-dock'
+
+export default guardedRoute('GET /api/dock', { handle: ({ context }) => listDock(context) })
