@@ -1,4 +1,4 @@
-import { GS, restoreControlCharacters } from './control-characters'
+import { EOT, GS, restoreControlCharacters, RS } from './control-characters'
 import { parseGs1 } from './gs1'
 import { faultsOfFields, parseEnvelope, splitDataIdentifier } from './iso15434'
 import { contentOf } from './label-content'
@@ -10,14 +10,13 @@ const LONGEST_LABEL = 4096
 /** Symbology prefixes that announce GS1 data: Code 128, Data Matrix, QR, DataBar. Others are cut off. */
 const GS1_PREFIX = /^\](C1|d2|Q3|e0)/
 const OTHER_PREFIX = /^\][A-Za-z]\d/
-/** Anything but separators. */
-const CONTENT = /[^\u0004\u001D\u001E]/
+const SEPARATORS = [GS, RS, EOT]
 /** A quantity, perhaps faulty, as opposed to a serial that begins with Q. */
 const QUANTITY_LIKE = /^\d+([.,]\d+)?\s?([A-Z]{2,3})?$/
 
 /** An unannounced text is GS1 when it is in brackets, holds GS, or begins with a GTIN or SSCC. */
 function looksLikeGs1(text: string): boolean {
-  return /^\(\d{2,4}\)/.test(text) || (text.includes(GS) && /^\u001D?\d{2}/.test(text)) || /^(00\d{18}|0[12]\d{14})/.test(text)
+  return /^\(\d{2,4}\)/.test(text) || (text.includes(GS) && /^\d{2}/.test(text.startsWith(GS) ? text.slice(1) : text)) || /^(00\d{18}|0[12]\d{14})/.test(text)
 }
 
 /** One identifier a code, as on linear labels; what has no known identifier is just text. */
@@ -41,7 +40,7 @@ function grammarOf(text: string): { kind: LabelKind; result: GrammarResult } {
   const bare = text.replace(OTHER_PREFIX, '')
   if (bare.startsWith('[)>')) return { kind: 'iso15434', result: parseEnvelope(bare) }
   if (looksLikeGs1(bare)) return { kind: 'gs1', result: parseGs1(bare) }
-  if (/[\u0004\u001D\u001E]/.test(bare) || bare.startsWith('[)')) return { kind: 'iso15434', result: wrongEnvelope() }
+  if (SEPARATORS.some(each => bare.includes(each)) || bare.startsWith('[)')) return { kind: 'iso15434', result: wrongEnvelope() }
   return { kind: 'plain', result: parsePlain(bare) }
 }
 
@@ -63,7 +62,7 @@ function refused(text: string, code: 'label.empty' | 'label.too-long', sentence:
  */
 export function parseLabel(text: string): LabelReading {
   const scanned = text.trim()
-  if (!CONTENT.test(scanned)) return refused(scanned, 'label.empty', 'The scan is empty.')
+  if ([...scanned].every(each => SEPARATORS.includes(each))) return refused(scanned, 'label.empty', 'The scan is empty.')
   if (scanned.length > LONGEST_LABEL) {
     return refused(scanned.slice(0, LONGEST_LABEL), 'label.too-long', `The scan has ${scanned.length} characters; a label has at most ${LONGEST_LABEL}.`)
   }
