@@ -32,7 +32,38 @@ export const ROUTE_ACCESS = {
   'POST /api/uploads/:id/assignment': ['inspector', 'engineer'],
   'POST /api/uploads/:id/discard': ['inspector', 'engineer'],
   'POST /api/measurements/:id/voiding': ['engineer'],
+
+  'GET /api/parts': inside,
+  'POST /api/parts': ['engineer'],
+  'GET /api/parts/:number': inside,
+  'PUT /api/parts/:number': ['engineer'],
+  'POST /api/parts/:number/sheets': ['engineer'],
+  'PUT /api/sheets/:id': ['engineer'],
+  'POST /api/sheets/:id/submission': ['engineer'],
+  'POST /api/sheets/:id/send-back': ['engineer'],
+  'POST /api/sheets/:id/approval': ['engineer'],
+  'POST /api/sheets/:id/retirement': ['engineer'],
+  'POST /api/rigs': ['engineer'],
+  'GET /api/rigs/:code': inside,
+  'PUT /api/rigs/:code': ['engineer'],
+  'POST /api/rigs/:code/calibrations': ['engineer'],
+
+  'GET /api/drift': ['engineer', 'supplier', 'inspector', 'auditor', 'administrator'],
+  'GET /api/drift/suppliers': ['engineer', 'auditor', 'administrator'],
+  'POST /api/drift/bases': ['engineer'],
+
+  'GET /api/logbook': ['auditor', 'engineer', 'administrator'],
+  'GET /api/logbook/check': ['auditor', 'engineer', 'administrator'],
+  'GET /api/people': ['administrator'],
+  'POST /api/people': ['administrator'],
+  'PATCH /api/people/:id': ['administrator'],
+  'POST /api/people/:id/disabling': ['administrator'],
+  'POST /api/people/:id/enabling': ['administrator'],
+  'POST /api/people/:id/password': ['administrator'],
 } as const satisfies Record<string, Access>
+
+/** Routes that answer everyone without looking at who asks, and why. */
+export const ROUTES_OUTSIDE_THE_TABLE: Record<string, string> = {}
 
 export type RouteKey = keyof typeof ROUTE_ACCESS
 

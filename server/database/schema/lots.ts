@@ -84,7 +84,7 @@ export const switchingActions = sqliteTable('switching_actions', {
   id: integer('id').primaryKey(),
   supplierId: integer('supplier_id').notNull().references(() => suppliers.id),
   partId: integer('part_id').notNull().references(() => parts.id),
-  kind: text('kind').$type<'consent-reduced' | 'reopen' | 'to-normal' | 'to-tightened'>().notNull(),
+  kind: text('kind').$type<'reduced-agreed' | 'normal-restored' | 'reopened'>().notNull(),
   reason: text('reason').notNull(),
   byId: integer('by_id').notNull().references(() => people.id),
   at: text('at').notNull(),

@@ -1,6 +1,6 @@
 import { index, integer, primaryKey, real, sqliteTable, text, uniqueIndex } from 'drizzle-orm/sqlite-core'
 import type { LimitSheetContent } from '#shared/compute/terms/judgement'
-import type { SheetState } from '#shared/compute/lifecycle/sheet'
+import type { LimitSheetState } from '#shared/compute/lifecycle/limit-sheet'
 import type { MotorDesign } from '#shared/compute/terms/motor'
 import { people, suppliers } from './people'
 
@@ -31,7 +31,7 @@ export const limitSheets = sqliteTable('limit_sheets', {
   id: integer('id').primaryKey(),
   partId: integer('part_id').notNull().references(() => parts.id),
   version: integer('version').notNull(),
-  state: text('state').$type<SheetState>().notNull(),
+  state: text('state').$type<LimitSheetState>().notNull(),
   content: text('content', { mode: 'json' }).$type<LimitSheetContent>().notNull(),
   /** What changed and why, in the author's words. */
   reason: text('reason').notNull().default(''),

@@ -1,5 +1,6 @@
 import { index, integer, sqliteTable, text } from 'drizzle-orm/sqlite-core'
-import type { Disposition, NonconformanceState } from '#shared/compute/lifecycle/nonconformance'
+import type { Disposition } from '#shared/compute/lifecycle/lot'
+import type { NonconformanceState } from '#shared/compute/lifecycle/nonconformance'
 import { lots } from './lots'
 import { papers } from './papers'
 import { people, suppliers } from './people'

@@ -41,8 +41,8 @@ export function appendToLogbook(services: Pick<Services, 'clock' | 'randomBytes'
 
 /** Hash of what an entry says, salted so that the digest alone tells nothing. */
 export function hashLogbookContent(entry: { sequence: number; at: string; actorId: number | null; action: string; subjectKind: string; subjectId: string; content: string; salt: string }): string {
-  const { salt, ...told } = entry
-  return sha256Hex(salt + canonicalJson(told))
+  const { sequence, at, actorId, action, subjectKind, subjectId, content, salt } = entry
+  return sha256Hex(salt + canonicalJson({ sequence, at, actorId, action, subjectKind, subjectId, content }))
 }
 
 function canonicalJson(value: Record<string, unknown>): string {

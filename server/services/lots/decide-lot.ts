@@ -1,4 +1,5 @@
 import { eq } from 'drizzle-orm'
+import { lotLifecycle } from '#shared/compute/lifecycle/lot'
 import { decisionSchema } from '#shared/contracts/lots'
 import type { Decision, DecisionAnswer } from '#shared/contracts/lots'
 import type { Transaction } from '../../database/client'
@@ -52,9 +53,8 @@ function checkDecidable(lot: typeof lots.$inferSelect, evidence: Evidence, decis
     return false
   }
   if (computed === 'reject') return false
-  if (decision.reason === '') {
-    throw new DomainError('conflict', computed === 'accept' ? 'The plan accepts this lot. Give the reason for rejecting it all the same.' : 'The plan has not rejected this lot. Give the reason for rejecting it now.', { fields: [{ field: 'reason', message: 'A reason is needed.' }] })
-  }
+  if (computed === 'open') throw new DomainError('conflict', `The lot cannot be rejected yet. ${evidence.lotVerdict.sentence}`)
+  if (decision.reason === '') throw new DomainError('conflict', 'The plan accepts this lot. Give the reason for rejecting it all the same.', { fields: [{ field: 'reason', message: 'A reason is needed.' }] })
   return true
 }
 
@@ -64,7 +64,7 @@ function writeDecision(context: Context, tx: Transaction, lot: typeof lots.$infe
     lotId: lot.id, outcome: decision.outcome, overruled, reason: decision.reason, lotVerdict: evidence.lotVerdict, evidenceHash: evidence.hash,
     signedById: context.actor.personId, signedAt: at,
   }).returning().get()
-  tx.update(lots).set({ state: decision.outcome, decidedAt: at }).where(eq(lots.id, lot.id)).run()
+  tx.update(lots).set({ state: lotLifecycle.transition(lot.state, decision.outcome === 'accepted' ? 'accept' : 'reject'), decidedAt: at }).where(eq(lots.id, lot.id)).run()
   appendToLogbook(context, tx, {
     actorId: context.actor.personId, action: `lot.${decision.outcome}`, subjectKind: 'lot', subjectId: lot.number,
     content: { decisionId: written.id, evidenceHash: evidence.hash, overruled, judged: evidence.lotVerdict.judged, classes: evidence.lotVerdict.classes },

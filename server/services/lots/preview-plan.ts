@@ -2,7 +2,7 @@ import { makePlan } from '#shared/compute/sampling/plan'
 import type { PlanPreview } from '#shared/contracts/lots'
 import { now } from '../context'
 import type { Context } from '../context'
-import { getSheetInForce } from '../parts/sheet-in-force'
+import { getSheetInForce, limitedClasses } from '../parts/sheet-in-force'
 import { getSupplierAndPart } from './receive-lot'
 import { severityOfNextLot } from './severity'
 
@@ -12,7 +12,7 @@ export function previewPlan(context: Context, input: { supplierCode: string; par
   const sheet = getSheetInForce(context.db, part, now(context))
   const severity = severityOfNextLot(context.db, { supplierId: supplier.id, partId: part.id })
   return {
-    plan: makePlan({ lotSize: input.quantity, scheme: sheet.content.sampling, severity: severity.severity }),
+    plan: makePlan({ lotSize: input.quantity, scheme: sheet.content.sampling, severity: severity.severity, limited: limitedClasses(sheet.content) }),
     sheetVersion: sheet.version,
     severityReason: severity.reason,
   }

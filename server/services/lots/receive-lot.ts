@@ -12,7 +12,7 @@ import { now, randomHex } from '../context'
 import type { Context } from '../context'
 import { DomainError } from '../domain-error'
 import { appendToLogbook } from '../logbook/append'
-import { getSheetInForce } from '../parts/sheet-in-force'
+import { getSheetInForce, limitedClasses } from '../parts/sheet-in-force'
 import { severityOfNextLot } from './severity'
 
 /**
@@ -33,7 +33,7 @@ export function receiveLot(context: Context, input: ReceiveLot): { number: strin
     const at = now(context)
     const sheet = getSheetInForce(tx, part, at)
     const severity = severityOfNextLot(tx, { supplierId: supplier.id, partId: part.id })
-    const plan = makePlan({ lotSize: delivery.quantity, scheme: sheet.content.sampling, severity: severity.severity })
+    const plan = makePlan({ lotSize: delivery.quantity, scheme: sheet.content.sampling, severity: severity.severity, limited: limitedClasses(sheet.content) })
     const number = nextReceiptNumber(context, tx)
     const lot = tx.insert(lots).values({
       number, supplierId: supplier.id, partId: part.id, supplierLot: delivery.supplierLot, quantity: delivery.quantity, orderNumber: delivery.orderNumber,

@@ -1,6 +1,6 @@
 import { and, desc, eq, or } from 'drizzle-orm'
 import { parseLabel } from '#shared/compute/intake/label/parse-label'
-import type { LabelReading } from '#shared/compute/intake/label/parse-label'
+import type { LabelRead } from '#shared/compute/intake/label/label-reading'
 import type { ReceivingPrefill, ScanAnswer } from '#shared/contracts/lots'
 import { lots, samples } from '../../database/schema/lots'
 import { papers } from '../../database/schema/papers'
@@ -18,13 +18,13 @@ export function scan(context: Context, text: string): ScanAnswer {
   const known = findKnown(context, text.trim())
   if (known.length === 1) return { kind: 'open', ...known[0]! }
   if (known.length > 1) return { kind: 'choose', choices: known }
-  const parsed = parseLabel(text)
-  if (!parsed.ok) return { kind: 'problem', problems: parsed.faults, form: null }
-  if (parsed.reading.kind === 'plain') return { kind: 'problem', problems: [{ sentence: `Nothing here is called “${text.trim()}”.`, remedy: 'Scan the label of the delivery, or type a lot, a motor’s serial, a paper or a rig.' }], form: null }
-  return resolveLabel(context, parsed.reading)
+  const label = parseLabel(text)
+  if (!label.ok) return { kind: 'problem', problems: label.faults, form: null }
+  if (label.kind === 'plain' && label.elements.length === 0) return { kind: 'problem', problems: [{ sentence: `Nothing here is called “${text.trim()}”.`, remedy: 'Scan the label of the delivery, or type a lot, a motor’s serial, a paper or a rig.' }], form: null }
+  return resolveLabel(context, label)
 }
 
-function resolveLabel(context: Context, reading: LabelReading): ScanAnswer {
+function resolveLabel(context: Context, reading: LabelRead): ScanAnswer {
   if (reading.serial && !reading.lot) {
     const motors = findMotors(context, reading.serial)
     if (motors.length === 1) return { kind: 'open', ...motors[0]! }
@@ -42,11 +42,11 @@ function resolveLabel(context: Context, reading: LabelReading): ScanAnswer {
     supplierCode: supplier?.code ?? '', partNumber: part?.number ?? '', supplierLot: reading.lot ?? '', quantity: reading.quantity ?? null, orderNumber: reading.orderNumber ?? '',
   }
   if (problems.length > 0) return { kind: 'problem', problems, form }
-  return { kind: 'receive', form, notes: reading.unknown.map(field => `The label also carries ${field.identifier} “${field.value}”, which is not used here.`) }
+  return { kind: 'receive', form, notes: reading.remarks.map(remark => remark.sentence) }
 }
 
 /** Part and supplier that a label names, and a sentence for each that is not known. */
-function identify(context: Context, reading: LabelReading) {
+function identify(context: Context, reading: LabelRead) {
   const problems: { sentence: string; remedy: string }[] = []
   const { db } = context
   const supplier = reading.supplier ? db.select().from(suppliers).where(eq(suppliers.code, reading.supplier)).get() : undefined

@@ -1,6 +1,6 @@
 import { and, eq, isNull, ne } from 'drizzle-orm'
 import { matchSerial } from '#shared/compute/intake/label/match-serial'
-import { judgeMotor } from '#shared/compute/judging/judge-motor'
+import { judgeMotor } from '#shared/compute/judging/motor-verdict'
 import type { AnalysisOutcome, Fault } from '#shared/compute/terms/measurement'
 import type { UploadAnswer } from '#shared/contracts/lots'
 import { lots, lotSerials, samples } from '../../database/schema/lots'

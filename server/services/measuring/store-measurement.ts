@@ -1,4 +1,6 @@
-import { and, count, eq, isNull, max } from 'drizzle-orm'
+import { and, eq, isNull, max } from 'drizzle-orm'
+import { lotLifecycle } from '#shared/compute/lifecycle/lot'
+import { judgeLot } from '#shared/compute/sampling/lot-verdict'
 import type { MotorVerdict } from '#shared/compute/terms/judgement'
 import type { MapResult } from '#shared/compute/terms/measurement'
 import type { UploadAnswer } from '#shared/contracts/lots'
@@ -71,9 +73,17 @@ function insertMeasurement(context: Context, tx: Transaction, input: Measurement
   return measurement
 }
 
-/** Measuring from the first judged motor on, ready when every drawn motor is judged. */
-export function advanceLot(tx: Transaction, lot: Pick<typeof lots.$inferSelect, 'id'>): void {
-  const judged = countedMeasurements(tx, lot.id).filter(row => row.measurement?.verdict).length
-  const drawn = tx.select({ n: count() }).from(samples).where(and(eq(samples.lotId, lot.id))).get()!.n
-  tx.update(lots).set({ state: judged === 0 ? 'drawn' : judged < drawn ? 'measuring' : 'ready' }).where(eq(lots.id, lot.id)).run()
+/**
+ * Brings the lot's state in line with its counted measurements: measuring from the first judged motor on, ready as soon as the plan can decide (every sample
+ * judged, or the rejection number reached), and back when an attempt was voided.
+ */
+export function advanceLot(tx: Transaction, lot: typeof lots.$inferSelect): void {
+  const counted = countedMeasurements(tx, lot.id)
+  const verdict = judgeLot({ plan: lot.plan, motors: counted.map(row => row.measurement?.judgement ?? null) })
+  const decidable = verdict.outcome !== 'open'
+  let state = lot.state
+  if (state === 'drawn') state = lotLifecycle.transition(state, 'measure')
+  if (state === 'measuring' && decidable) state = lotLifecycle.transition(state, 'finish-measuring')
+  if (state === 'ready' && !decidable) state = lotLifecycle.transition(state, 'reopen-measuring')
+  tx.update(lots).set({ state }).where(eq(lots.id, lot.id)).run()
 }

@@ -1,5 +1,5 @@
 import { eq } from 'drizzle-orm'
-import { formatQuantity } from '#shared/compute/judging/characteristics'
+import { formatQuantity } from '#shared/compute/judging/quantities'
 import type { UploadAnswer } from '#shared/contracts/lots'
 import type { Reader } from '../../database/client'
 import { samples } from '../../database/schema/lots'

@@ -1,6 +1,7 @@
 import { and, desc, eq, lte } from 'drizzle-orm'
 import { limitSheets } from '../../database/schema/parts'
 import type { Reader } from '../../database/client'
+import type { LimitSheetContent, NonconformityClass } from '#shared/compute/terms/judgement'
 import { DomainError } from '../domain-error'
 
 /**
@@ -15,4 +16,9 @@ export function getSheetInForce(db: Pick<Reader, 'select'>, part: { id: number; 
     .orderBy(desc(limitSheets.effectiveFrom), desc(limitSheets.version)).limit(1).get()
   if (!sheet) throw new DomainError('refused', `Part ${part.number} has no approved limit sheet, so nothing can be judged. Ask a quality engineer to approve one, then receive the lot.`)
   return sheet
+}
+
+/** The classes that a sheet's limits use; each needs a count in the plan. */
+export function limitedClasses(content: LimitSheetContent): NonconformityClass[] {
+  return [...new Set(content.limits.map(limit => limit.class))]
 }

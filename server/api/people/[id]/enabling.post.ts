@@ -1,0 +1,10 @@
+import { personParamsSchema } from '#shared/contracts/people'
+import { setPersonDisabled } from '../../../services/people/manage-people'
+
+export default guardedRoute('POST /api/people/:id/enabling', {
+  params: personParamsSchema,
+  handle: ({ context, params }) => {
+    setPersonDisabled(context, params.id, false)
+    return { done: true }
+  },
+})
