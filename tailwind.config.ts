@@ -4,8 +4,9 @@ const token = (name: string) => `rgb(var(--${name}) / <alpha-value>)`
 
 /** The one set of design tokens; their light and dark values stand in app/assets/css/tailwind.css. */
 export default {
-  darkMode: ['selector', '[data-theme="dark"]'],
+  
   content: ['./app/**/*.{vue,ts}'],
+  safelist: ['text-ink', 'text-copper', 'text-steel', 'text-caution', 'text-soft'],
   theme: {
     colors: {
       transparent: 'transparent',
