@@ -56,7 +56,7 @@ function plainBytes(bytes: Uint8Array): Uint8Array {
   if (bytes[0] === 0xFE && bytes[1] === 0xFF) return new TextEncoder().encode(new TextDecoder('utf-16be').decode(bytes))
   const start = bytes[0] === 0xEF && bytes[1] === 0xBB && bytes[2] === 0xBF ? 3 : 0
   const body = start ? bytes.subarray(start) : bytes
-  const first = body.subarray(0, HEAD_BYTES)
+  const first = body.subarray(0, 4096)
   return first.includes(13) && !first.includes(10) ? body.map((byte) => (byte === 13 ? 10 : byte)) : body
 }
 

@@ -63,7 +63,7 @@ class RowReader {
   private readonly slots: number[] = []
   private readonly names: string[] = []
   private line: number
-  private lastWord = ''
+  private lastWord: Uint8Array = new Uint8Array(0)
   private lastSign = 0
 
   constructor(private readonly head: TableHead, bound: BoundColumn[], length: number) {
@@ -121,13 +121,13 @@ class RowReader {
   }
 
   private readDirection(cells: CellScanner, row: number): Fault | null {
-    const word = cells.text()
-    if (word !== this.lastWord) {
+    if (!cells.skipWord(this.lastWord)) {
+      const word = cells.text()
       const sign = parseDirection(word)
       if (sign === null) {
         return fail('direction-unknown', this.line, `The direction "${word.slice(0, 40)}" is not known.`, 'Write fwd or rev, or +1 or -1, in the direction column.').fault
       }
-      this.lastWord = word
+      this.lastWord = /^[ -~]*$/.test(word) ? new TextEncoder().encode(word) : new Uint8Array(0)
       this.lastSign = sign
     }
     this.sink.direction![row] = this.lastSign

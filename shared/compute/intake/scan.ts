@@ -184,10 +184,22 @@ export class CellScanner {
     if (separator === SPACE) this.skipBlanks()
   }
 
+  /**
+   * Moves behind the cell at `position` if it reads as the given bytes, and tells so.
+   *
+   * @param word - bytes of a cell, without blanks about it
+   */
+  skipWord(word: Uint8Array): boolean {
+    this.skipBlanks()
+    for (let index = 0; index < word.length; index++) if (this.bytes[this.position + index] !== word[index]) return false
+    return word.length > 0 && this.closes(this.position + word.length)
+  }
+
   /** Moves to the line behind the next newline. */
   skipLine(): void {
-    const end = this.bytes.indexOf(NEWLINE, this.position)
-    this.position = end + 1
+    let at = this.position
+    while (this.bytes[at] !== NEWLINE) at++
+    this.position = at + 1
   }
 
   /** True at the newline. */

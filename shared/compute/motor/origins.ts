@@ -1,4 +1,3 @@
-import type { Method } from '../terms/measurement'
 import type { BrushlessDesign, MotorDesign, Origin, OrderOrigin } from '../terms/motor'
 import { designOrder, symmetryOf } from './design-order'
 
@@ -24,9 +23,14 @@ function statorReason(order: number, poles: number, sayEccentric: boolean): stri
   return `A multiple of the ${poles} poles only: something on the stator side, such as a slot opening, a tooth, an oval bore or the lamination${sayEccentric ? ', or a rotor that sits off centre' : ''}.`
 }
 
-/** What a drive that holds a position adds to its own map. */
-function driveReason(order: number, poles: number): string | null {
+/** How the map was taken: shaft free of current, windings carrying a load's current, or a drive holding the position. */
+export type Circumstance = 'free' | 'loaded' | 'held'
+
+/** What current in the windings adds to the map. */
+function driveReason(order: number, poles: number, circumstance: Circumstance): string | null {
   const pairs = poles / 2
+  if (circumstance === 'free') return null
+  if (circumstance === 'loaded') return order % (6 * pairs) === 0 && order <= 12 * pairs ? 'ripple of the load\'s current or of the winding, not cogging' : null
   if (order === pairs) return 'an offset of the drive\'s current measurement, or a magnet or iron nearby'
   if (order === 2 * pairs) return 'unequal gains of the drive\'s current measurement'
   if (order === 6 * pairs || order === 12 * pairs) return 'the drive\'s dead time'
@@ -80,23 +84,23 @@ function stepperOrigin(order: number, base: number, design: Exclude<MotorDesign,
  * Brushless with Q slots and 2p poles: multiples of L = lcm(Q, 2p) are the design's; a fault on the rotor leaves only multiples of Q, one on the
  * stator only multiples of 2p; orders 1 and 2 are the shaft's and its fixture's. Claw-pole stepper: multiples of half the design order are unequal
  * stacks. Hybrid stepper with N_r teeth: multiples of N_r are unequal poles or cups. An order that fits two origins gets both ("either").
- * A hold map also carries drive errors at orders p, 2p, 6p and 12p.
+ * A hold map also carries drive errors at orders p, 2p, 6p and 12p, a map under load the ripple of its current at 6p and 12p.
  *
  * Source: Gašparin et al., IEEE Transactions on Magnetics 45(3), 2009; Islam, Mir and Sebastian, IEEE Transactions on Industry Applications 40(3), 2004
  * (both from memory).
  *
  * @param order - cycles per turn, 1 or more
  * @param design - the motor
- * @param method - how the map was measured; only a hold map carries drive errors
+ * @param circumstance - how the map was taken
  * @returns one origin, or two, with the reason in one sentence
  * @throws RangeError when the order is not a whole number of its domain, or as `designOrder`
  */
-export function originOfOrder(order: number, design: MotorDesign, method: Method = 'torque-sensor'): OrderOrigin {
+export function originOfOrder(order: number, design: MotorDesign, circumstance: Circumstance = 'free'): OrderOrigin {
   if (!Number.isInteger(order) || order < 1) throw new RangeError(`originOfOrder: order must be a whole number from 1, not ${order}`)
   if (design.kind === 'claw-pole stepper') return stepperOrigin(order, 2 * design.polePairs, design)
   if (design.kind === 'hybrid stepper') return stepperOrigin(order, design.rotorTeeth, design)
   const origin = brushlessOrigin(order, design)
-  const drive = method === 'hold' ? driveReason(order, design.poles) : null
+  const drive = driveReason(order, design.poles, circumstance)
   if (drive === null) return origin
   const origins: Origin[] = origin.origins[0] === 'other' ? ['other'] : [...origin.origins, 'other']
   const motor = origin.origins[0] === 'other' ? 'the motor itself' : origin.reason.replace(/^Either: /, '').replace(/\.$/, '')

@@ -1,14 +1,13 @@
 import { fail } from '../intake/fault'
 import { designOrder } from '../motor/design-order'
-import type { AnalysisOutcome, AnalysisSettings, Warning } from '../terms/measurement'
+import type { AnalysisOutcome, AnalysisSettings, ColumnRecipe, Fault, Warning } from '../terms/measurement'
 import { characteristicsOf } from './characteristics'
 import { ENGINE_VERSION } from './engine-version'
 import type { MapEstimate } from './estimate'
 import { tabulateOrders, type OrderTable } from './orders'
 import { readFiles, type MeasurementFile } from './readings'
 import { angleSensorEccentricity } from './sidebands'
-import { estimateFromTorqueSensor, type EstimateOutcome } from './torque-sensor'
-import type { Readings } from './readings'
+import { estimateFromTorqueSensor } from './torque-sensor'
 
 const MOST_ORDER = 65_536
 
@@ -30,11 +29,15 @@ function checkSettings(files: MeasurementFile[], settings: AnalysisSettings): vo
   }
 }
 
-/** The estimator of each method; all give the same kind of estimate. */
-function estimateMap(readings: Readings, settings: AnalysisSettings): EstimateOutcome {
+type MethodOutcome = { ok: true; estimate: MapEstimate; recipe: ColumnRecipe } | { ok: false; fault: Fault; recipe?: ColumnRecipe }
+
+/** The reader and estimator of each method; all give the same kind of estimate. */
+function estimateMap(files: MeasurementFile[], settings: AnalysisSettings): MethodOutcome {
   switch (settings.method) {
-    case 'torque-sensor':
-      return estimateFromTorqueSensor(readings, settings)
+    case 'torque-sensor': {
+      const read = readFiles(files, settings)
+      return read.ok ? { ...estimateFromTorqueSensor(read.readings, settings), recipe: read.recipe } : read
+    }
     case 'hold':
     case 'spin':
       return fail('method-not-supported', null, `Files of the method "${settings.method}" cannot be judged yet.`, 'Measure the motor with a torque sensor.')
@@ -66,11 +69,9 @@ function compensationWarnings(estimate: MapEstimate, settings: AnalysisSettings)
  */
 export function analyse(files: MeasurementFile[], settings: AnalysisSettings): AnalysisOutcome {
   checkSettings(files, settings)
-  const read = readFiles(files, settings)
-  if (!read.ok) return read
-  const estimated = estimateMap(read.readings, settings)
-  if (!estimated.ok) return { ok: false, fault: estimated.fault, recipe: read.recipe }
-  const { estimate } = estimated
+  const estimated = estimateMap(files, settings)
+  if (!estimated.ok) return estimated
+  const { estimate, recipe } = estimated
   const table = tabulateOrders(estimate, settings)
   return {
     ok: true,
@@ -87,7 +88,7 @@ export function analyse(files: MeasurementFile[], settings: AnalysisSettings): A
       orders: table.listed,
       characteristics: characteristicsOf(estimate, table, settings),
       warnings: [...estimate.warnings, ...rigWarnings(table), ...compensationWarnings(estimate, settings)],
-      recipe: read.recipe,
+      recipe,
     },
   }
 }

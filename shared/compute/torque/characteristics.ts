@@ -1,8 +1,9 @@
 import { designOrder } from '../motor/design-order'
-import type { AnalysisSettings, Characteristic, CharacteristicUnit } from '../terms/measurement'
+import type { AnalysisSettings, Characteristic, CharacteristicUnit, FourierSeries } from '../terms/measurement'
 import type { Origin } from '../terms/motor'
 import { compensatedPeakToPeak } from './compensation'
-import { amplitudeOf, rmsOf, type MapEstimate } from './estimate'
+import { clearPart, type ClearPart } from './clear-part'
+import { amplitudeOf, gridValues, rmsOf, type MapEstimate } from './estimate'
 import { extremesOf, type Extremes } from './extremes'
 import { groupRms, type OrderTable } from './orders'
 import { RIPPLE_DEFINITIONS, rippleRatio, type RippleInputs } from './ripple'
@@ -13,11 +14,15 @@ const ORIGINS: Origin[] = ['design', 'rotorSide', 'statorSide', 'turn', 'other']
 const ONE_DIRECTION = 'The shaft was turned in one direction only, so friction is not separated.'
 const ONE_TURN = 'Fewer than two turns of one direction were measured.'
 
-/** What the characteristics of one map are computed from. */
+/** What the characteristics of one map are computed from: its orders that stand above the noise. */
 interface Subject {
   estimate: MapEstimate
   table: OrderTable
   settings: AnalysisSettings
+  cogging: ClearPart
+  coggingGrid: Float64Array
+  friction: ClearPart | null
+  frictionGrid: Float64Array
   extremes: Extremes
   rms: number
 }
@@ -33,37 +38,35 @@ function notStated(key: string, unit: CharacteristicUnit, reason: string): Chara
 const torqueFigure = (subject: Subject, key: string, value: number, deviationNm: number) =>
   stated(key, value, 'N·m', expandedNm(value, deviationNm, subject.settings.rig))
 
-/** Peak-to-peak is a difference of two angles; RMS moves by σ/√2 and is raised by noise power. */
-function deviationOfPeakToPeak({ estimate }: Subject): number {
-  return Math.SQRT2 * estimate.mapDeviationNm
-}
+/** Peak-to-peak is a difference of two angles; RMS moves by σ/√2, and by what is left out. */
+const deviationOfPeakToPeak = (part: ClearPart) => Math.SQRT2 * part.deviationNm
 
-function deviationOfRms({ estimate, rms }: Subject): number {
-  const power = estimate.highestOrder * estimate.coefficientDeviationNm ** 2
-  return Math.hypot(estimate.coefficientDeviationNm / Math.SQRT2, rms > 0 ? Math.min(power / (2 * rms), Math.sqrt(power)) : Math.sqrt(power))
+function deviationOfRms({ estimate, cogging, rms }: Subject): number {
+  if (rms === 0) return cogging.deviationNm
+  return Math.hypot(estimate.coefficientDeviationNm / Math.SQRT2, Math.min(cogging.deviationNm ** 2 / (2 * rms), cogging.deviationNm))
 }
 
 function coggingFigures(subject: Subject): Characteristic[] {
-  const { estimate, extremes, rms } = subject
+  const { estimate, extremes, rms, cogging } = subject
   const raw = estimate.rawPeakToPeakNm
   return [
-    torqueFigure(subject, 'cogging.peakToPeak', extremes.highest - extremes.lowest, deviationOfPeakToPeak(subject)),
+    torqueFigure(subject, 'cogging.peakToPeak', extremes.highest - extremes.lowest, deviationOfPeakToPeak(cogging)),
     torqueFigure(subject, 'cogging.rms', rms, deviationOfRms(subject)),
     raw === null
       ? notStated('cogging.peakToPeak.raw', 'N·m', 'The two directions have no bin in common.')
-      : torqueFigure(subject, 'cogging.peakToPeak.raw', raw, deviationOfPeakToPeak(subject)),
+      : torqueFigure(subject, 'cogging.peakToPeak.raw', raw, deviationOfPeakToPeak(cogging)),
   ]
 }
 
 /** Largest one-sided torque with friction in it: of even + odd part forward, even − odd part in reverse. */
-function detentPeak({ coggingGrid, frictionGrid, cogging, friction }: MapEstimate): number {
+function detentPeak(cogging: FourierSeries, coggingGrid: Float64Array, friction: FourierSeries, frictionGrid: Float64Array): number {
   let peak = 0
   for (const sign of [1, -1]) {
-    const grid = coggingGrid.map((value, index) => value + sign * frictionGrid![index]!)
+    const grid = coggingGrid.map((value, index) => value + sign * frictionGrid[index]!)
     const series = {
-      meanNm: sign * friction!.meanNm,
-      cosNm: cogging.cosNm.map((value, index) => value + sign * friction!.cosNm[index]!),
-      sinNm: cogging.sinNm.map((value, index) => value + sign * friction!.sinNm[index]!),
+      meanNm: sign * friction.meanNm,
+      cosNm: cogging.cosNm.map((value, index) => value + sign * friction.cosNm[index]!),
+      sinNm: cogging.sinNm.map((value, index) => value + sign * friction.sinNm[index]!),
     }
     const { highest, lowest } = extremesOf(series, grid)
     peak = Math.max(peak, highest, -lowest)
@@ -72,14 +75,14 @@ function detentPeak({ coggingGrid, frictionGrid, cogging, friction }: MapEstimat
 }
 
 function frictionFigures(subject: Subject): Characteristic[] {
-  const { estimate } = subject
-  const { friction, frictionGrid } = estimate
-  if (!friction || !frictionGrid) return ['detent.peak', 'friction.mean', 'friction.peakToPeak'].map((key) => notStated(key, 'N·m', ONE_DIRECTION))
-  const { highest, lowest } = extremesOf(friction, frictionGrid)
+  const { estimate, cogging, coggingGrid, friction, frictionGrid } = subject
+  if (!friction) return ['detent.peak', 'friction.mean', 'friction.peakToPeak'].map((key) => notStated(key, 'N·m', ONE_DIRECTION))
+  const { highest, lowest } = extremesOf(friction.series, frictionGrid)
+  const peak = detentPeak(cogging.series, coggingGrid, friction.series, frictionGrid)
   return [
-    torqueFigure(subject, 'detent.peak', detentPeak(estimate), deviationOfPeakToPeak(subject)),
-    torqueFigure(subject, 'friction.mean', friction.meanNm, estimate.frictionMeanDeviationNm),
-    torqueFigure(subject, 'friction.peakToPeak', highest - lowest, deviationOfPeakToPeak(subject)),
+    torqueFigure(subject, 'detent.peak', peak, Math.hypot(cogging.deviationNm, friction.deviationNm, estimate.frictionMeanDeviationNm)),
+    torqueFigure(subject, 'friction.mean', friction.series.meanNm, estimate.frictionMeanDeviationNm),
+    torqueFigure(subject, 'friction.peakToPeak', highest - lowest, deviationOfPeakToPeak(friction)),
   ]
 }
 
@@ -90,7 +93,7 @@ function rippleFigures(subject: Subject): Characteristic[] {
     const key = `rippleRatio.${definition}`
     const ratio = rippleRatio(definition, inputs)
     if ('notStated' in ratio) return notStated(key, '%', ratio.notStated)
-    const deviation = ratio.of === 'rms' ? deviationOfRms(subject) : deviationOfPeakToPeak(subject) / (ratio.of === 'halfPeakToPeak' ? 2 : 1)
+    const deviation = ratio.of === 'rms' ? deviationOfRms(subject) : deviationOfPeakToPeak(subject.cogging) / (ratio.of === 'halfPeakToPeak' ? 2 : 1)
     // A ratio to the map's own mean does not hang on the scale of the sensor.
     const rig = definition.endsWith('OverRated') || !settings.rig ? settings.rig : { ...settings.rig, torqueRelativeUncertainty: 0 }
     const expanded = expandedNm(ratio.percent / ratio.perNm, deviation, rig)
@@ -144,11 +147,11 @@ function repeatability(subject: Subject): Characteristic {
 }
 
 function compensationFigures(subject: Subject): Characteristic[] {
-  const { estimate, settings, extremes } = subject
+  const { estimate, settings, extremes, cogging } = subject
   if (!settings.compensation) return []
   const before = extremes.highest - extremes.lowest
-  const left = compensatedPeakToPeak(estimate.cogging, estimate.coggingGrid.length, settings.compensation) + (estimate.repeatabilityNm ?? 0)
-  const after = torqueFigure(subject, 'afterCompensation.peakToPeak', left, deviationOfPeakToPeak(subject))
+  const left = compensatedPeakToPeak(cogging.series, estimate.bins, settings.compensation) + (estimate.repeatabilityNm ?? 0)
+  const after = torqueFigure(subject, 'afterCompensation.peakToPeak', left, deviationOfPeakToPeak(cogging))
   if (!(before > 0)) return [after, notStated('afterCompensation.reduction', '%', 'There is no torque to compensate.')]
   const expanded = after.expandedUncertainty === null ? null : (100 * after.expandedUncertainty) / before
   return [after, stated('afterCompensation.reduction', 100 * (1 - left / before), '%', expanded)]
@@ -164,12 +167,18 @@ function eccentricityFigure({ estimate, table, settings }: Subject): Characteris
 /**
  * All characteristics of a map (each: value, unit, expanded uncertainty k = 2). What cannot be computed has no value and says why.
  *
+ * Peak-to-peak, RMS and what follows from them are of the fitted orders 1…K that stand above the noise (see `clearPart`), evaluated between grid points too.
+ *
  * @param estimate - the map
  * @param table - its orders
  * @param settings - motor, limits, rig
  */
 export function characteristicsOf(estimate: MapEstimate, table: OrderTable, settings: AnalysisSettings): Characteristic[] {
-  const subject: Subject = { estimate, table, settings, extremes: extremesOf(estimate.cogging, estimate.coggingGrid), rms: rmsOf(estimate.cogging) }
+  const cogging = clearPart(estimate.cogging, estimate.coefficientDeviationNm)
+  const friction = estimate.friction && clearPart(estimate.friction, estimate.frictionCoefficientDeviationNm)
+  const [coggingGrid, frictionGrid] = gridValues(cogging.series, estimate.bins, friction?.series)
+  const extremes = extremesOf(cogging.series, coggingGrid)
+  const subject: Subject = { estimate, table, settings, cogging, coggingGrid, friction, frictionGrid, extremes, rms: rmsOf(cogging.series) }
   return [
     ...coggingFigures(subject), ...frictionFigures(subject), ...rippleFigures(subject), ...orderFigures(subject), ...groupFigures(subject),
     harmonicContent(subject), repeatability(subject), ...compensationFigures(subject), eccentricityFigure(subject),

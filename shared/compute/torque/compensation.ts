@@ -26,7 +26,7 @@ export function compensatedPeakToPeak(cogging: FourierSeries, points: number, co
   checkSettings(compensation)
   const { entries, stepNm } = compensation
   const size = FINER * points
-  const torque = gridValues({ ...cogging, meanNm: 0 }, size)
+  const [torque] = gridValues({ ...cogging, meanNm: 0 }, size)
   const table = evaluateSeries({ ...cogging, meanNm: 0 }, entries)
   let highest = -Infinity
   let lowest = Infinity

@@ -97,7 +97,7 @@ function findTooFew(readings: Readings, coverage: Coverage, order: number): Faul
 }
 
 function supportedOrder(coverages: Coverage[]): number {
-  const byAngles = Math.min(...coverages.map((coverage) => Math.min(coverage.angles / FITTED_SAMPLES_A_PERIOD, (coverage.readings - 1) / FITTED_SAMPLES_A_PERIOD)))
+  const byAngles = Math.min(...coverages.map((coverage) => coverage.angles / FITTED_SAMPLES_A_PERIOD))
   const byGap = Math.min(...coverages.map((coverage) => Math.PI / coverage.gapRad))
   return Math.floor(Math.min(byAngles, byGap) + 1e-9)
 }

@@ -1,6 +1,6 @@
 import { emptyMoments, addReadings } from './moments'
 import { fitSeries } from './least-squares'
-import { gridOf, residualsOf, type Residuals } from './residuals'
+import { gridsOf, residualsOf, type Residuals } from './residuals'
 import type { Extent } from './coverage'
 import type { Readings } from './readings'
 
@@ -35,12 +35,12 @@ function clockOf(readings: Readings): Float64Array {
 
 /** Part of the clock that no function of angle and direction can explain. */
 function unexplained(readings: Readings, labels: Int8Array, extent: Extent, clock: Float64Array): Residuals {
-  const grids = extent.coverages.map(({ direction }) => {
-    const moments = emptyMoments(extent.bins, extent.highestOrder)
+  const fits = extent.coverages.map(({ direction }) => {
+    const moments = emptyMoments(extent.highestOrder)
     addReadings(moments, readings.angleRad, clock, labels, direction)
-    return gridOf(fitSeries(moments, extent.highestOrder), direction, extent.bins)
+    return { direction, fit: fitSeries(moments, extent.highestOrder) }
   })
-  return residualsOf(readings, clock, labels, grids)
+  return residualsOf(readings, clock, labels, gridsOf(fits, extent.bins))
 }
 
 /** Square sum that the clock keeps at the most, by turns and highest order: enough to see that a drift cannot be real. */

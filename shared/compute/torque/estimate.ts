@@ -1,5 +1,5 @@
 import type { FourierSeries, Warning } from '../terms/measurement'
-import { synthesise, type Spectrum } from './fourier'
+import { synthesisePair, type Spectrum } from './fourier'
 
 /** A map as estimated from the readings, whichever way it was measured; all that the characteristics are computed from. */
 export interface MapEstimate {
@@ -11,16 +11,16 @@ export interface MapEstimate {
   zeroNm: number
   /** Even part less its mean. */
   cogging: FourierSeries
-  coggingGrid: Float64Array
   /** Odd part; null with one direction only. */
   friction: FourierSeries | null
-  frictionGrid: Float64Array | null
+  /** Grid points a turn at which series are evaluated; 16 a period of the highest order or more. */
+  bins: number
   /** Peak-to-peak of the binned points themselves, N·m. */
   rawPeakToPeakNm: number | null
-  /** Standard uncertainty, by noise and repeatability, of the even or odd map at one angle, N·m. */
-  mapDeviationNm: number
-  /** The same of one Fourier coefficient, N·m. */
+  /** Standard uncertainty of one Fourier coefficient of the even part by noise, resolution and repeatability, N·m. */
   coefficientDeviationNm: number
+  /** The same of the odd part. */
+  frictionCoefficientDeviationNm: number
   /** The same of the mean of the odd part, N·m. */
   frictionMeanDeviationNm: number
   /** Turn-to-turn standard deviation, N·m; null with fewer than two turns of one direction. */
@@ -39,8 +39,7 @@ export function seriesOf(spectrum: Spectrum, keepMean: boolean): FourierSeries {
   }
 }
 
-/** Values of a series on a grid of a power of two points. */
-export function gridValues(series: FourierSeries, points: number): Float64Array {
+function spectrumOf(series: FourierSeries): Spectrum {
   const length = series.cosNm.length + 1
   const spectrum: Spectrum = { re: new Float64Array(length), im: new Float64Array(length) }
   spectrum.re[0] = series.meanNm
@@ -48,7 +47,12 @@ export function gridValues(series: FourierSeries, points: number): Float64Array 
     spectrum.re[order] = series.cosNm[order - 1]! / 2
     spectrum.im[order] = -series.sinNm[order - 1]! / 2
   }
-  return synthesise(spectrum, points)
+  return spectrum
+}
+
+/** Values of one or two series on a grid of a power of two points. */
+export function gridValues(series: FourierSeries, points: number, second: FourierSeries | null = null): [Float64Array, Float64Array] {
+  return synthesisePair(spectrumOf(series), second && spectrumOf(second), points)
 }
 
 /** Half the sum (sign +1) or half the difference (sign −1) of two spectra. */

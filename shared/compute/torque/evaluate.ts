@@ -37,9 +37,15 @@ export function evaluateAt(series: FourierSeries, angleRad: number): { value: nu
   let value = series.meanNm
   let slope = 0
   let curvature = 0
+  // cos kθ and sin kθ by rotation; the error grows as k times the rounding of a double.
+  const stepCosine = Math.cos(angleRad)
+  const stepSine = Math.sin(angleRad)
+  let cosine = 1
+  let sine = 0
   for (let order = 1; order <= series.cosNm.length; order++) {
-    const cosine = Math.cos(order * angleRad)
-    const sine = Math.sin(order * angleRad)
+    const turned = cosine * stepCosine - sine * stepSine
+    sine = sine * stepCosine + cosine * stepSine
+    cosine = turned
     const here = series.cosNm[order - 1]! * cosine + series.sinNm[order - 1]! * sine
     value += here
     slope += order * (series.sinNm[order - 1]! * cosine - series.cosNm[order - 1]! * sine)

@@ -44,18 +44,39 @@ export function transformReal(values: Float64Array): Float64Array {
  * @returns the values at angles 2πm/points
  */
 export function synthesise(spectrum: Spectrum, points: number, scale = 1): Float64Array {
-  const { fft, first, second } = planOf(points)
-  first.fill(0)
-  const { re, im } = spectrum
-  first[0] = re[0]!
-  for (let order = 1; order < re.length; order++) {
-    first[2 * order] = first[2 * (points - order)] = re[order]!
-    first[2 * order + 1] = im[order]!
-    first[2 * (points - order) + 1] = -im[order]!
+  return synthesisePair(spectrum, null, points, scale)[0]
+}
+
+/**
+ * Values on a full grid of two real functions at once: one is the real part, the other the imaginary part of one complex transform.
+ *
+ * @param first - c_0…c_K of the one
+ * @param second - c_0…c_K of the other; null: zero
+ * @param points - number of grid points, a power of two above 2K
+ * @param scale - factor on every value
+ * @returns the values of both at angles 2πm/points
+ */
+export function synthesisePair(first: Spectrum, second: Spectrum | null, points: number, scale = 1): [Float64Array, Float64Array] {
+  const { fft, first: input, second: output } = planOf(points)
+  input.fill(0)
+  for (let order = 0; order < first.re.length; order++) {
+    const a = first.re[order]!
+    const b = first.im[order]!
+    const c = second ? second.re[order]! : 0
+    const d = second ? second.im[order]! : 0
+    input[2 * order] = a - d
+    input[2 * order + 1] = b + c
+    if (order === 0) continue
+    input[2 * (points - order)] = a + d
+    input[2 * (points - order) + 1] = c - b
   }
-  fft.inverseTransform(second, first)
-  const values = new Float64Array(points)
+  fft.inverseTransform(output, input)
+  const one = new Float64Array(points)
+  const other = new Float64Array(second ? points : 0)
   const factor = points * scale
-  for (let index = 0; index < points; index++) values[index] = second[2 * index]! * factor
-  return values
+  for (let index = 0; index < points; index++) {
+    one[index] = output[2 * index]! * factor
+    if (second) other[index] = output[2 * index + 1]! * factor
+  }
+  return [one, other]
 }

@@ -21,6 +21,13 @@ export interface Moments {
   count: number
 }
 
+/** Grid for moments: a power of two above 4K, so that sums of counts up to 2K are on it; a finer one costs more in transforms than it saves in terms. */
+function gridFor(highestOrder: number): number {
+  let bins = 64
+  while (bins < 4 * highestOrder + 2) bins *= 2
+  return bins
+}
+
 /** Terms of the Taylor series of e^{ix} up to the tolerance. */
 function termsFor(x: number): number {
   let terms = 1
@@ -29,12 +36,12 @@ function termsFor(x: number): number {
 }
 
 /**
- * Empty moments for a grid.
+ * Empty moments.
  *
- * @param bins - number of bins M, a power of two
  * @param highestOrder - highest order K to be fitted; sums of counts are needed up to 2K
  */
-export function emptyMoments(bins: number, highestOrder: number): Moments {
+export function emptyMoments(highestOrder: number): Moments {
+  const bins = gridFor(highestOrder)
   const weightTerms = termsFor((2 * highestOrder * Math.PI) / bins)
   const valueTerms = termsFor((highestOrder * Math.PI) / bins)
   return { bins, weightTerms, valueTerms, sums: new Float64Array(bins * (weightTerms + valueTerms)), count: 0 }

@@ -1,7 +1,8 @@
 import type { AnalysisSettings, OrderAmplitude } from '../terms/measurement'
 import type { Origin } from '../terms/motor'
-import { originOfOrder } from '../motor/origins'
-import { amplitudeOf, phaseOf, type MapEstimate } from './estimate'
+import { originOfOrder, type Circumstance } from '../motor/origins'
+import { amplitudeOf, phaseOf, rmsOf, type MapEstimate } from './estimate'
+import { isLoaded } from './ripple'
 import { significantAmplitude } from './significance'
 import { findSidebands, sidebandReason, type SidebandPair } from './sidebands'
 import { COVERAGE_FACTOR, expandedNm } from './uncertainty'
@@ -16,6 +17,14 @@ export interface OrderTable {
   thresholdNm: number
 }
 
+/** Whether current flowed in the windings. The peak-to-peak of a sine of the same RMS is enough to see a load. */
+function circumstanceOf(estimate: MapEstimate, settings: AnalysisSettings): Circumstance {
+  if (settings.method === 'hold') return 'held'
+  const half = Math.SQRT2 * rmsOf(estimate.cogging)
+  const loaded = isLoaded({ highestNm: half, lowestNm: -half, rmsNm: half, meanNm: estimate.zeroNm, ratedTorqueNm: settings.ratedTorqueNm })
+  return loaded ? 'loaded' : 'free'
+}
+
 /**
  * Judges every fitted order against the noise, and gives each significant one its origin.
  *
@@ -25,13 +34,14 @@ export interface OrderTable {
 export function tabulateOrders(estimate: MapEstimate, settings: AnalysisSettings): OrderTable {
   const { cogging, highestOrder, coefficientDeviationNm } = estimate
   const thresholdNm = significantAmplitude(coefficientDeviationNm, highestOrder)
+  const circumstance = circumstanceOf(estimate, settings)
   const sidebands = findSidebands(estimate, thresholdNm, settings.design)
   const listed: OrderAmplitude[] = []
   for (let order = 1; order <= highestOrder; order++) {
     const amplitudeNm = amplitudeOf(cogging, order)
     const significant = amplitudeNm > thresholdNm && amplitudeNm > 0
     if (!significant && !settings.ordersNamed.includes(order)) continue
-    const origin = originOfOrder(order, settings.design, settings.method)
+    const origin = originOfOrder(order, settings.design, circumstance)
     const reason = origin.origins[0] === 'other' ? sidebandReason(order, sidebands, settings.design) ?? origin.reason : origin.reason
     listed.push({
       order, amplitudeNm, phaseDeg: phaseOf(cogging, order),

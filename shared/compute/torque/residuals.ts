@@ -1,4 +1,4 @@
-import { synthesise } from './fourier'
+import { synthesisePair } from './fourier'
 import type { SeriesFit } from './least-squares'
 import type { Readings } from './readings'
 
@@ -9,6 +9,8 @@ const ROBUST_SAMPLE = 1024
 /** A reading this many robust standard deviations off the fit is a spike. Common practice, no source. */
 const SPIKE_DEVIATIONS = 8
 const SMALLEST_SPIKE_SHARE = 0.02
+/** The largest go first: a gross spike bends the fit, so that sound readings stand off it too. */
+const GROSS_SHARE = 0.5
 
 /** What the fit leaves of each reading, N·m. */
 export interface Residuals {
@@ -26,9 +28,11 @@ export interface FittedGrid {
   values: Float64Array
 }
 
-/** Values of a fit on the grid. */
-export function gridOf(fit: SeriesFit, direction: 1 | -1, bins: number): FittedGrid {
-  return { direction, values: synthesise(fit.spectrum, bins) }
+/** Values of the fits of one or two directions on the grid. */
+export function gridsOf(fits: { direction: 1 | -1; fit: SeriesFit }[], bins: number): FittedGrid[] {
+  const [first, second] = fits
+  const [one, other] = synthesisePair(first!.fit.spectrum, second?.fit.spectrum ?? null, bins)
+  return second ? [{ direction: first!.direction, values: one }, { direction: second.direction, values: other }] : [{ direction: first!.direction, values: one }]
 }
 
 /** Four-point Lagrange interpolation on a periodic grid; on 16 points a period good to 5e-4 of that order, on 50 to 6e-6. */
@@ -81,25 +85,28 @@ export function residualsOf(readings: Readings, torqueNm: Float64Array, labels: 
 /**
  * Rows whose reading stands far off the fit.
  *
- * Robust test: the residual is more than 8 robust standard deviations, and more than 2 % of the peak-to-peak torque, and more than two steps of the sensor.
+ * Robust test, to be repeated after a new fit until it finds none: the residual is more than half of the largest, more than 8 robust standard deviations, and more than 2 % of the peak-to-peak torque, and more than two steps of the sensor.
  *
  * @param residuals - what the fit leaves
  * @param labels - direction of each reading
- * @param peakToPeakNm - of the fitted torque
+ * @param grids - the fitted torque
  * @param stepNm - step of the sensor
  * @returns the rows
  */
-export function findSpikes(residuals: Residuals, labels: Int8Array, peakToPeakNm: number, stepNm: number): number[] {
-  const limit = Math.max(SPIKE_DEVIATIONS * residuals.robustNm, SMALLEST_SPIKE_SHARE * peakToPeakNm, 2 * stepNm)
+export function findSpikes(residuals: Residuals, labels: Int8Array, grids: FittedGrid[], stepNm: number): number[] {
+  const least = Math.max(SPIKE_DEVIATIONS * residuals.robustNm, 2 * stepNm)
   const rows: number[] = []
   for (let row = 0; row < labels.length; row++) {
-    if (labels[row] !== 0 && Math.abs(residuals.values[row]!) > limit) rows.push(row)
+    if (labels[row] !== 0 && Math.abs(residuals.values[row]!) > least) rows.push(row)
   }
-  return rows
+  if (rows.length === 0) return rows
+  const largest = rows.reduce((most, row) => Math.max(most, Math.abs(residuals.values[row]!)), 0)
+  const limit = Math.max(SMALLEST_SPIKE_SHARE * typicalPeakToPeak(grids), GROSS_SHARE * largest)
+  return rows.filter((row) => Math.abs(residuals.values[row]!) > limit)
 }
 
 /** Peak-to-peak of the middle of the fits, by the 2nd and 98th hundredth so that a spike does not raise it. */
-export function typicalPeakToPeak(grids: FittedGrid[]): number {
+function typicalPeakToPeak(grids: FittedGrid[]): number {
   return Math.max(...grids.map(({ values }) => {
     const step = Math.max(1, Math.floor(values.length / ROBUST_SAMPLE))
     const sorted = values.filter((_, index) => index % step === 0).sort()

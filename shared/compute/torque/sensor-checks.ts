@@ -23,6 +23,12 @@ export interface TorqueRuns {
   extremes: { row: number; length: number; torqueNm: number }[]
 }
 
+function angleBetween(angleRad: Float64Array, from: number, to: number): number {
+  let angle = 0
+  for (let row = from + 1; row <= to; row++) angle += shortestStep(angleRad[row - 1]!, angleRad[row]!)
+  return angle
+}
+
 /** Finds the runs of equal torque among the readings that belong to a pass. */
 export function torqueRuns(readings: Readings, labels: Int8Array): TorqueRuns {
   const { torqueNm, angleRad } = readings
@@ -32,20 +38,26 @@ export function torqueRuns(readings: Readings, labels: Int8Array): TorqueRuns {
   let runs = 0
   let used = 0
   let step = Infinity
-  for (let row = 0; row < readings.rows;) {
+  let row = 0
+  while (row < readings.rows) {
     if (labels[row] === 0) {
       row++
       continue
     }
     const value = torqueNm[row]!
-    const start = row
-    let angle = 0
-    while (++row < readings.rows && labels[row] !== 0 && torqueNm[row] === value) angle += shortestStep(angleRad[row - 1]!, angleRad[row]!)
+    const start = row++
+    while (row < readings.rows && labels[row] !== 0 && torqueNm[row] === value) row++
     const length = row - start
     runs++
     used += length
-    if (row < readings.rows && labels[row] !== 0) step = Math.min(step, Math.abs(torqueNm[row]! - value))
-    if (Math.abs(angle) > widest.angleRad) widest = { row: start, length, angleRad: Math.abs(angle) }
+    if (row < readings.rows && labels[row] !== 0) {
+      const difference = Math.abs(torqueNm[row]! - value)
+      if (difference < step) step = difference
+    }
+    if (length > 2) {
+      const angle = Math.abs(angleBetween(angleRad, start, row - 1))
+      if (angle > widest.angleRad) widest = { row: start, length, angleRad: angle }
+    }
     if (value > highest.torqueNm || (value === highest.torqueNm && length > highest.length)) highest = { row: start, length, torqueNm: value }
     if (value < lowest.torqueNm || (value === lowest.torqueNm && length > lowest.length)) lowest = { row: start, length, torqueNm: value }
   }

@@ -4,7 +4,8 @@ import { symmetryOf } from '../motor/design-order'
 import { amplitudeOf, phaseOf, type MapEstimate } from './estimate'
 
 /* Limits of this file are common practice, no source. */
-const STRONG_SHARE = 0.1
+/** A carrier is this many times the threshold of significance and its larger sideband. */
+const CARRIER_RATIO = 3
 const MOST_UNEQUAL = 2
 const PHASE_TOLERANCE_DEG = 35
 
@@ -22,6 +23,7 @@ function pairAt(estimate: MapEstimate, order: number, threshold: number, isOther
   if (order < 3 || order + 1 > highestOrder || !isOther(order - 1) || !isOther(order + 1)) return null
   const below = amplitudeOf(cogging, order - 1)
   const above = amplitudeOf(cogging, order + 1)
+  if (amplitudeOf(cogging, order) < CARRIER_RATIO * Math.max(below, above)) return null
   if (Math.min(below, above) < threshold || Math.max(below, above) > MOST_UNEQUAL * Math.min(below, above)) return null
   const sum = phaseOf(cogging, order - 1) + phaseOf(cogging, order + 1) - 2 * phaseOf(cogging, order)
   const offZero = Math.abs(sum - 360 * Math.round(sum / 360))
@@ -43,9 +45,8 @@ function pairAt(estimate: MapEstimate, order: number, threshold: number, isOther
  */
 export function findSidebands(estimate: MapEstimate, threshold: number, design: MotorDesign): SidebandPair[] {
   const orders = Array.from({ length: estimate.highestOrder }, (_, index) => index + 1)
-  const largest = Math.max(0, ...orders.map((order) => amplitudeOf(estimate.cogging, order)))
   const isOther = (order: number) => ['other', 'turn'].includes(originOfOrder(order, design).origins[0]!)
-  return orders.filter((order) => amplitudeOf(estimate.cogging, order) >= Math.max(threshold, STRONG_SHARE * largest))
+  return orders.filter((order) => threshold > 0 && amplitudeOf(estimate.cogging, order) >= CARRIER_RATIO * threshold)
     .map((order) => pairAt(estimate, order, threshold, isOther))
     .filter((pair): pair is SidebandPair => pair !== null)
 }
@@ -71,7 +72,7 @@ export function angleSensorEccentricity(pairs: SidebandPair[]): { eccentricityRa
  * @param design - the motor; eccentricity is not named where it makes no new order
  */
 export function sidebandReason(order: number, pairs: SidebandPair[], design: MotorDesign): string | null {
-  const pair = pairs.find((candidate) => Math.abs(candidate.order - order) === 1)
+  const pair = pairs.filter((candidate) => Math.abs(candidate.order - order) === 1).sort((a, b) => b.weight - a.weight)[0]
   if (!pair) return null
   if (pair.kind === 'angle sensor') return `Sideband of order ${pair.order} with the phase of an eccentric angle sensor: the rig, not the motor.`
   const eccentric = design.kind === 'brushless' && symmetryOf(design) >= 3 ? '' : ', as with an eccentric air gap'

@@ -4,17 +4,17 @@ import type { AnalysisSettings, Fault, Warning } from '../terms/measurement'
 import { findDirections } from './directions'
 import { findDrift, type Drift } from './drift'
 import { findExtent, type Extent } from './coverage'
-import { gridValues, halfSum, rmsOf, seriesOf, type MapEstimate } from './estimate'
+import { halfSum, rmsOf, seriesOf, type MapEstimate } from './estimate'
 import { fitSeries, type SeriesFit } from './least-squares'
-import { addReadings, emptyMoments, type Moments } from './moments'
+import { addReadings, emptyMoments } from './moments'
 import { faultAt, type Readings } from './readings'
-import { findSpikes, gridOf, residualsOf, typicalPeakToPeak, type FittedGrid, type Residuals } from './residuals'
+import { findSpikes, gridsOf, residualsOf, type FittedGrid, type Residuals } from './residuals'
 import { findBadSensor, repeatedValues, torqueRuns } from './sensor-checks'
 import { coefficientFloor } from './significance'
 import { turnScatter, type TurnScatter } from './turns'
 
 const MOST_SPIKES = 0.005
-const SPIKE_ROUNDS = 4
+const SPIKE_ROUNDS = 12
 const TURN_RAD = 2 * Math.PI
 const BANDWIDTH_RATIO = 10
 
@@ -22,19 +22,20 @@ export type EstimateOutcome = { ok: true; estimate: MapEstimate } | { ok: false;
 
 /** Fits of all directions and what they leave. */
 interface Fitted {
-  fits: { direction: 1 | -1; fit: SeriesFit; moments: Moments }[]
+  fits: { direction: 1 | -1; fit: SeriesFit }[]
+  torqueNm: Float64Array
   grids: FittedGrid[]
   residuals: Residuals
 }
 
 function fitAll(readings: Readings, torqueNm: Float64Array, labels: Int8Array, extent: Extent): Fitted {
   const fits = extent.coverages.map(({ direction }) => {
-    const moments = emptyMoments(extent.bins, extent.highestOrder)
+    const moments = emptyMoments(extent.highestOrder)
     addReadings(moments, readings.angleRad, torqueNm, labels, direction)
-    return { direction, moments, fit: fitSeries(moments, extent.highestOrder) }
+    return { direction, fit: fitSeries(moments, extent.highestOrder) }
   })
-  const grids = fits.map(({ direction, fit }) => gridOf(fit, direction, extent.bins))
-  return { fits, grids, residuals: residualsOf(readings, torqueNm, labels, grids) }
+  const grids = gridsOf(fits, extent.bins)
+  return { fits, torqueNm, grids, residuals: residualsOf(readings, torqueNm, labels, grids) }
 }
 
 /** Fits, leaves out isolated spikes, and fits again until none is left. Labels of spikes become 0. */
@@ -42,7 +43,7 @@ function fitWithoutSpikes(readings: Readings, torqueNm: Float64Array, labels: In
   const spikes: number[] = []
   let fitted = fitAll(readings, torqueNm, labels, extent)
   for (let round = 0; round < SPIKE_ROUNDS; round++) {
-    const rows = findSpikes(fitted.residuals, labels, typicalPeakToPeak(fitted.grids), stepNm)
+    const rows = findSpikes(fitted.residuals, labels, fitted.grids, stepNm)
     if (rows.length === 0) break
     spikes.push(...rows)
     if (spikes.length > MOST_SPIKES * readings.rows) {
@@ -88,7 +89,7 @@ function bandwidthWarning(readings: Readings, extent: Extent, settings: Analysis
   if (!bandwidth || !readings.timeS) return []
   let seconds = 0
   for (let file = 0; file < readings.names.length; file++) seconds += readings.timeS[readings.starts[file + 1]! - 1]! - readings.timeS[readings.starts[file]!]!
-  const turnsPerSecond = extent.coverages.reduce((sum, { runRad }) => sum + runRad, 0) / TURN_RAD / seconds
+  const turnsPerSecond = extent.coverages.reduce((sum, coverage) => sum + coverage.runRad, 0) / TURN_RAD / seconds
   const order = Math.max(designOrder(settings.design), ...settings.ordersNamed)
   const x = (order * turnsPerSecond) / bandwidth
   if (!(x * BANDWIDTH_RATIO > 1) || !Number.isFinite(x)) return []
@@ -100,19 +101,32 @@ function bandwidthWarning(readings: Readings, extent: Extent, settings: Analysis
 }
 
 /** Peak-to-peak of the bins' means, both directions averaged where both have readings. */
-function rawPeakToPeak(fits: Fitted['fits']): number | null {
-  const [first, second] = fits.map(({ moments }) => moments)
+function rawPeakToPeak(readings: Readings, torqueNm: Float64Array, labels: Int8Array, extent: Extent): number | null {
+  const { bins } = extent
+  const sums = [new Float64Array(bins), new Float64Array(bins)] as const
+  const counts = [new Uint32Array(bins), new Uint32Array(bins)] as const
+  for (let row = 0; row < readings.rows; row++) {
+    const label = labels[row]!
+    if (label === 0) continue
+    const bin = Math.floor((readings.angleRad[row]! * bins) / TURN_RAD + 0.5) & (bins - 1)
+    const side = label > 0 ? 0 : 1
+    sums[side][bin]! += torqueNm[row]!
+    counts[side][bin]!++
+  }
+  return spanOfMeans(sums, counts, extent.coverages.length === 2 ? null : extent.coverages[0]!.direction > 0 ? 0 : 1)
+}
+
+/** Highest less lowest of the means, of one side or, where `side` is null, of both averaged. */
+function spanOfMeans(sums: readonly [Float64Array, Float64Array], counts: readonly [Uint32Array, Uint32Array], side: 0 | 1 | null): number | null {
+  const first = side ?? 0
+  const second = side ?? 1
   let highest = -Infinity
   let lowest = Infinity
-  const mean = (moments: Moments, bin: number) => {
-    const at = bin * (moments.weightTerms + moments.valueTerms)
-    return moments.sums[at + moments.weightTerms]! / moments.sums[at]!
-  }
-  for (let bin = 0; bin < first!.bins; bin++) {
-    const value = second ? (mean(first!, bin) + mean(second, bin)) / 2 : mean(first!, bin)
-    if (Number.isNaN(value)) continue
-    highest = Math.max(highest, value)
-    lowest = Math.min(lowest, value)
+  for (let bin = 0; bin < sums[0].length; bin++) {
+    if (counts[first][bin] === 0 || counts[second][bin] === 0) continue
+    const value = (sums[first][bin]! / counts[first][bin]! + sums[second][bin]! / counts[second][bin]!) / 2
+    if (value > highest) highest = value
+    if (value < lowest) lowest = value
   }
   return highest >= lowest ? highest - lowest : null
 }
@@ -145,7 +159,7 @@ function pooledRepeatability(scatters: TurnScatter[]) {
 }
 
 /** Even and odd part of the fits. */
-function partsOf(fitted: Fitted, bins: number) {
+function partsOf(fitted: Fitted) {
   const forward = fitted.fits.find(({ direction }) => direction === 1)?.fit.spectrum
   const reverse = fitted.fits.find(({ direction }) => direction === -1)?.fit.spectrum
   const even = forward && reverse ? halfSum(forward, reverse, 1) : (forward ?? reverse)!
@@ -154,25 +168,23 @@ function partsOf(fitted: Fitted, bins: number) {
   return {
     directions: forward && reverse ? 'both' as const : forward ? 'forward' as const : 'reverse' as const,
     zeroNm: even.re[0]!, cogging, friction,
-    coggingGrid: gridValues(cogging, bins),
-    frictionGrid: friction && gridValues(friction, bins),
   }
 }
 
 function estimateOf(readings: Readings, labels: Int8Array, extent: Extent, fitted: Fitted, drift: Drift | null, settings: AnalysisSettings, repeats: number): MapEstimate {
   const scatters = extent.coverages.map(({ direction }) => turnScatter(readings, fitted.residuals.values, labels, direction, extent.highestOrder))
   const deviations = deviationsOf(fitted, scatters, extent.highestOrder, settings.rig?.torqueResolutionNm ?? 0, repeats)
-  const parts = partsOf(fitted, extent.bins)
+  const parts = partsOf(fitted)
   const byNoise = deviations.mapDeviationNm * Math.sqrt(2 / (2 * extent.highestOrder + 1))
-  const coefficientDeviationNm = Math.max(byNoise, coefficientFloor(parts.cogging))
   return {
     rows: readings.rows,
     turns: scatters.reduce((sum, { turns }) => sum + turns, 0),
     highestOrder: extent.highestOrder,
     ...parts,
-    rawPeakToPeakNm: rawPeakToPeak(fitted.fits),
-    mapDeviationNm: coefficientDeviationNm * Math.sqrt((2 * extent.highestOrder + 1) / 2),
-    coefficientDeviationNm,
+    bins: extent.bins,
+    rawPeakToPeakNm: rawPeakToPeak(readings, fitted.torqueNm, labels, extent),
+    coefficientDeviationNm: Math.max(byNoise, coefficientFloor(parts.cogging)),
+    frictionCoefficientDeviationNm: Math.max(byNoise, parts.friction ? coefficientFloor(parts.friction) : 0),
     frictionMeanDeviationNm: Math.hypot(deviations.meanDeviationNm, drift ? drift.slopeUncertainty / 2 : 0),
     ...pooledRepeatability(scatters),
     warnings: [],
@@ -197,7 +209,7 @@ export function estimateFromTorqueSensor(readings: Readings, settings: AnalysisS
   const found = findExtent(readings, labels, settings)
   if (!found.ok) return found
   const { extent } = found
-  const kept = extent.coverages.map(({ direction }) => direction as number)
+  const kept: number[] = extent.coverages.map(({ direction }) => direction)
   for (let row = 0; row < labels.length; row++) if (!kept.includes(labels[row]!)) labels[row] = 0
   const runs = torqueRuns(readings, labels)
   const fault = findBadSensor(readings, runs, designOrder(settings.design))
@@ -206,7 +218,7 @@ export function estimateFromTorqueSensor(readings: Readings, settings: AnalysisS
   if ('fault' in first) return { ok: false, fault: first.fault }
   const { fitted, drift } = fitWithoutDrift(readings, labels, extent, first.fitted)
   const estimate = estimateOf(readings, labels, extent, fitted, drift, settings, runs.meanLength)
-  if (!Number.isFinite(rmsOf(estimate.cogging) + estimate.mapDeviationNm)) {
+  if (!Number.isFinite(rmsOf(estimate.cogging) + estimate.coefficientDeviationNm)) {
     return fail('not-computable', null, 'No map could be computed from the readings.', 'Check the columns and their units, and measure again.')
   }
   estimate.warnings = [...warnings, ...extent.warnings, ...directionWarning(extent), ...spikeWarning(first.spikes), ...driftWarning(drift), ...repeatedValues(runs),
