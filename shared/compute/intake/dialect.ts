@@ -1,5 +1,4 @@
 import { fail, type Outcome } from './fault'
-import { parseDirection } from './direction'
 import { readCell } from './scan'
 
 /** How a delimited text file separates its cells and writes its decimals. */
@@ -148,16 +147,23 @@ function sniffDialect(lines: HeadLine[], forced: string | undefined): { dialect:
 const isUnitsLine = (cells: string[]) => cells.every((cell) => cell.length <= 12 && !/\d{2}/.test(cell) && /^[[({]?[^\s,;]{0,10}[\])}]?$/.test(cell))
 const SHORT_UNIT = /^[[({]?(?:-|1|deg|°|rad|turns?|rev|s|ms|[uµμ]s|[mkuµμ]?g?f?N?[·.*\s]?c?m|N|[mk]?A|m?V|%|rpm|counts?|ozf?[·.-]?in|)[\])}]?$/i
 
+/** Columns that hold numbers in most of the lines. */
+function numericColumns(lines: string[][], decimal: Dialect['decimal'], columnCount: number): number[] {
+  const counts = Array.from({ length: columnCount }, (_, column) => lines.filter((cells) => readCell(cells[column] ?? '', decimal).kind === 'number').length)
+  const most = Math.max(...counts)
+  return counts.flatMap((count, column) => (count > 0 && count >= most / 2 ? [column] : []))
+}
+
 /** Finds header, line of units and first line of data. */
-function findData(lines: HeadLine[], found: { dialect: Dialect; columnCount: number }) {
+function findData(lines: HeadLine[], sniffed: HeadLine[], found: { dialect: Dialect; columnCount: number }) {
   const { dialect, columnCount } = found
   const cellsOf = (line: HeadLine) => splitCells(line.text, dialect.separator)
-  const isData = (cells: string[]) => cells.length >= columnCount && cells.some((cell) => readCell(cell, dialect.decimal).kind === 'number')
-    && cells.every((cell) => readCell(cell, dialect.decimal).kind !== 'text' || !/\d/.test(cell) || parseDirection(cell) !== null)
+  const numeric = numericColumns(sniffed.map(cellsOf), dialect.decimal, columnCount)
+  const isData = (cells: string[]) => numeric.every((column) => readCell(cells[column] ?? '', dialect.decimal).kind === 'number')
   const isWords = (cells: string[]) => cells.length >= Math.min(2, columnCount)
     && cells.every((cell) => ['text', 'empty'].includes(readCell(cell, dialect.decimal).kind))
   const first = lines.findIndex((line) => !line.text.startsWith('#') && isData(cellsOf(line)))
-  if (first < 0) return null
+  if (first < 0 || numeric.length === 0) return null
   const above = lines.slice(0, first).filter((line) => line.text.trim() !== '')
   const candidates = above.map((line) => ({ line, cells: splitCells(line.text.replace(/^#\s*/, ''), dialect.separator) }))
     .filter(({ line, cells }) => isWords(cells) && (!line.text.startsWith('#') || cells.length >= columnCount))
@@ -179,7 +185,7 @@ function readLines(bytes: Uint8Array, lines: HeadLine[]): TableHead | null {
   const usable = forced ? lines.slice(1) : lines
   const sniffed = usable.filter((line) => !line.text.startsWith('#') && line.text.trim() !== '').slice(-SNIFFED_LINES)
   const found = sniffDialect(sniffed, forced)
-  const data = found && findData(usable, found)
+  const data = found && findData(usable, sniffed, found)
   if (!data) return null
   const sample = usable.slice(usable.indexOf(data.start)).filter((line) => line.text.trim() !== '' && !line.text.startsWith('#')).slice(0, SAMPLE_LINES)
   return {
