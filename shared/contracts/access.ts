@@ -48,6 +48,14 @@ export const ROUTE_ACCESS = {
   'PUT /api/rigs/:code': ['engineer'],
   'POST /api/rigs/:code/calibrations': ['engineer'],
 
+  'GET /api/papers': inside,
+  'GET /api/papers/:number': inside,
+  'GET /api/papers/:number/pdf': insideAndSupplier,
+  'POST /api/papers/:number/withdrawal': ['engineer'],
+  'GET /api/check/:token': 'public',
+  'GET /api/check/:token/pdf': 'public',
+  'GET /api/check/:token/files/:sha256': 'public',
+
   'GET /api/drift': ['engineer', 'supplier', 'inspector', 'auditor', 'administrator'],
   'GET /api/drift/suppliers': ['engineer', 'auditor', 'administrator'],
   'POST /api/drift/bases': ['engineer'],
