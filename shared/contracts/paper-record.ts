@@ -21,6 +21,8 @@ const sampleSchema = z.object({
   measuredBy: text.nullable(),
   rig: text.nullable(),
   engineVersion: text.nullable(),
+  /** Columns as the rig's recipe named them; null: read from the file's own header. */
+  recipe: json<ColumnRecipe>().nullable(),
   files: z.array(fileSchema),
   characteristics: z.array(json<CharacteristicVerdict>()),
   warnings: z.array(json<Warning>()),
@@ -46,7 +48,7 @@ export const paperRecordSchema = z.object({
   draw: z.object({ seed: text, generator: text }),
   sheet: z.object({ version: z.number().int(), content: json<LimitSheetContent>(), author: text, approvedBy: text, approvedAt: text, effectiveFrom: text }),
   rigs: z.array(z.object({
-    code: text, name: text, method: z.custom<Method>(value => typeof value === 'string'), properties: json<RigProperties>(), recipe: json<ColumnRecipe>().nullable(),
+    code: text, name: text, method: z.custom<Method>(value => typeof value === 'string'), properties: json<RigProperties>(),
     calibration: z.object({ certificateNumber: text, laboratory: text, performedOn: text, dueOn: text, torqueRelativeUncertainty: z.number(), torqueAbsoluteUncertaintyNm: z.number() }),
   })),
   samples: z.array(sampleSchema),

@@ -52,7 +52,7 @@ function rigsOf(db: Db, counted: Counted): PaperRecord['rigs'] {
   const ids = [...new Set(counted.flatMap(row => row.measurement ? [row.measurement.calibrationId] : []))]
   if (ids.length === 0) return []
   return db.select({ rig: rigs, calibration: calibrations }).from(calibrations).innerJoin(rigs, eq(rigs.id, calibrations.rigId)).where(inArray(calibrations.id, ids)).orderBy(asc(rigs.code), asc(calibrations.id)).all().map(({ rig, calibration }) => ({
-    code: rig.code, name: rig.name, method: rig.method, properties: rig.properties, recipe: rig.recipe,
+    code: rig.code, name: rig.name, method: rig.method, properties: rig.properties,
     calibration: {
       certificateNumber: calibration.certificateNumber, laboratory: calibration.laboratory, performedOn: calibration.performedOn, dueOn: calibration.dueOn,
       torqueRelativeUncertainty: calibration.torqueRelativeUncertainty, torqueAbsoluteUncertaintyNm: calibration.torqueAbsoluteUncertaintyNm,
@@ -69,6 +69,7 @@ function samplesOf(db: Db, lotId: number, counted: Counted, nameOf: (id: number 
   return counted.map(({ sample, measurement }) => ({
     drawOrder: sample.drawOrder, position: sample.position, serial: sample.serial, verdict: measurement?.verdict ?? null, attempts: attempts.get(sample.id) ?? 0, attempt: measurement?.attempt ?? null,
     measuredAt: measurement?.measuredAt ?? null, measuredBy: measurement ? nameOf(measurement.measuredById) : null, rig: measurement ? rigCodes.get(measurement.rigId) ?? null : null, engineVersion: measurement?.engineVersion ?? null,
+    recipe: measurement && measurement.result.recipe.version > 0 ? measurement.result.recipe : null,
     files: files.filter(file => file.measurementId === measurement?.id).map(({ name, sha256, size }) => ({ name, sha256, size })),
     characteristics: measurement?.judgement.characteristics ?? [], warnings: measurement?.result.warnings ?? [], orders: measurement?.result.orders ?? [],
     cogging: measurement ? rounded(measurement.result.cogging) : null,
