@@ -18,6 +18,7 @@ export function evaluateSeries(series: FourierSeries, points: number): Float64Ar
   for (let order = 1; order <= series.cosNm.length; order++) {
     const cosine = series.cosNm[order - 1]!
     const sine = series.sinNm[order - 1]!
+    if (cosine === 0 && sine === 0) continue
     // k·i modulo the number of points keeps every angle inside the two tables.
     for (let index = 0, place = 0; index < points; index++, place = (place + order) % points) {
       values[index]! += cosine * cosines[place]! + sine * sines[place]!
