@@ -30,7 +30,8 @@ function clockOf(readings: Readings): Float64Array {
     for (let row = from; row < to; row++) clock[row] = value(row) - middle
     longest = Math.max(longest, value(to - 1) - value(from))
   }
-  return longest > 0 ? clock.map((value) => value / longest) : clock
+  if (longest > 0) for (let row = 0; row < clock.length; row++) clock[row]! /= longest
+  return clock
 }
 
 /** Part of the clock that no function of angle and direction can explain. */

@@ -29,39 +29,41 @@ function angleBetween(angleRad: Float64Array, from: number, to: number): number 
   return angle
 }
 
+/** Row behind the run of equal torque that begins at a row. */
+function endOfRun(torqueNm: Float64Array, labels: Int8Array, start: number): number {
+  const value = torqueNm[start]!
+  let row = start + 1
+  while (row < torqueNm.length && torqueNm[row] === value && labels[row] !== 0) row++
+  return row
+}
+
 /** Finds the runs of equal torque among the readings that belong to a pass. */
 export function torqueRuns(readings: Readings, labels: Int8Array): TorqueRuns {
   const { torqueNm, angleRad } = readings
-  let highest = { row: 0, length: 0, torqueNm: -Infinity }
-  let lowest = { row: 0, length: 0, torqueNm: Infinity }
-  let widest = { row: 0, length: 0, angleRad: 0 }
+  const extremes = [{ row: 0, length: 0, torqueNm: -Infinity }, { row: 0, length: 0, torqueNm: Infinity }] as const
+  const widest = { row: 0, length: 0, angleRad: 0 }
+  const [highest, lowest] = extremes
   let runs = 0
   let used = 0
   let step = Infinity
-  let row = 0
-  while (row < readings.rows) {
+  for (let row = 0; row < torqueNm.length;) {
     if (labels[row] === 0) {
       row++
       continue
     }
     const value = torqueNm[row]!
-    const start = row++
-    while (row < readings.rows && labels[row] !== 0 && torqueNm[row] === value) row++
-    const length = row - start
+    const end = endOfRun(torqueNm, labels, row)
+    const length = end - row
     runs++
     used += length
-    if (row < readings.rows && labels[row] !== 0) {
-      const difference = Math.abs(torqueNm[row]! - value)
-      if (difference < step) step = difference
-    }
-    if (length > 2) {
-      const angle = Math.abs(angleBetween(angleRad, start, row - 1))
-      if (angle > widest.angleRad) widest = { row: start, length, angleRad: angle }
-    }
-    if (value > highest.torqueNm || (value === highest.torqueNm && length > highest.length)) highest = { row: start, length, torqueNm: value }
-    if (value < lowest.torqueNm || (value === lowest.torqueNm && length > lowest.length)) lowest = { row: start, length, torqueNm: value }
+    if (end < torqueNm.length && labels[end] !== 0) step = Math.min(step, Math.abs(torqueNm[end]! - value))
+    const angle = length > 2 ? Math.abs(angleBetween(angleRad, row, end - 1)) : 0
+    if (angle > widest.angleRad) Object.assign(widest, { row, length, angleRad: angle })
+    if (value > highest.torqueNm || (value === highest.torqueNm && length > highest.length)) Object.assign(highest, { row, length, torqueNm: value })
+    if (value < lowest.torqueNm || (value === lowest.torqueNm && length > lowest.length)) Object.assign(lowest, { row, length, torqueNm: value })
+    row = end
   }
-  return { meanLength: runs > 0 ? used / runs : 1, stepNm: Number.isFinite(step) ? step : 0, widest, extremes: [highest, lowest] }
+  return { meanLength: runs > 0 ? used / runs : 1, stepNm: Number.isFinite(step) ? step : 0, widest, extremes: [...extremes] }
 }
 
 /** Readings next to a run that lie within one step of it: a rounded peak has shoulders, a clipped one has none. */

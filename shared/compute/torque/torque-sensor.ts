@@ -209,8 +209,10 @@ export function estimateFromTorqueSensor(readings: Readings, settings: AnalysisS
   const found = findExtent(readings, labels, settings)
   if (!found.ok) return found
   const { extent } = found
-  const kept: number[] = extent.coverages.map(({ direction }) => direction)
-  for (let row = 0; row < labels.length; row++) if (!kept.includes(labels[row]!)) labels[row] = 0
+  if (extent.coverages.length === 1) {
+    const kept = extent.coverages[0]!.direction
+    for (let row = 0; row < labels.length; row++) if (labels[row] !== kept) labels[row] = 0
+  }
   const runs = torqueRuns(readings, labels)
   const fault = findBadSensor(readings, runs, designOrder(settings.design))
   if (fault) return { ok: false, fault }
