@@ -23,6 +23,8 @@ export default defineNuxtConfig({
   // Every setting has a NUXT_… variable; a demo needs none of them.
   runtimeConfig: {
     demo: false,
+    /** full: about sixty past lots; small: six, for tests and quick starts. */
+    demoSize: 'full',
     dataFolder: '.data',
     plantName: 'Kestrel Fold Robotics',
     plantTimeZone: 'Europe/Berlin',

@@ -65,7 +65,7 @@ export async function startServer(): Promise<RunningServer> {
       origin: settings.public.origin, plantName: settings.plantName, plantTimeZone: settings.plantTimeZone, mailSender: settings.mail.sender, demo: settings.demo,
     },
   }
-  if (settings.demo) await seedDemo(services)
+  if (settings.demo) await seedDemo(services, settings.demoSize === 'small' ? 'small' : 'full')
   services.wake('papers')
   services.wake('outbox')
   return {

@@ -1,10 +1,15 @@
 import type { DemoResponse } from '#shared/contracts/session'
-import { DEMO_PASSWORD, scenario } from '../../database/seed/scenario'
+import { labelOf, lotsToday } from '../../database/seed/scenario/lots'
+import { DEMO_PASSWORD, PEOPLE } from '../../database/seed/scenario/people'
+import { demoDay } from '../../database/seed/seed-demo'
 import type { Services } from '../context'
 import { DomainError } from '../domain-error'
 
 /** The demo's accounts and the labels to scan; outside a demo there is no such thing. */
-export function describeDemo(services: Pick<Services, 'settings'>): DemoResponse {
+export function describeDemo(services: Pick<Services, 'db' | 'settings'>): DemoResponse {
   if (!services.settings.demo) throw new DomainError('not-found', 'This is not a demo.')
-  return { accounts: [], labels: [] }
+  return {
+    accounts: PEOPLE.filter(person => person.noticeRank !== 2).map(({ name, role, email }) => ({ name, role, email, password: DEMO_PASSWORD })),
+    labels: lotsToday(demoDay(services)).map((lot, index) => ({ title: lot.title, text: labelOf(lot, `PO-${7801 + index}`) })),
+  }
 }

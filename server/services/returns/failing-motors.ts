@@ -6,7 +6,7 @@ import { evaluateSeries } from '#shared/compute/torque/evaluate'
 import type { FailingMotor } from '#shared/contracts/returns'
 import type { Reader } from '../../database/client'
 import { measurementFiles, rawFiles } from '../../database/schema/measurements'
-import { countedMeasurements } from '../lots/counted-measurements'
+import type { countedMeasurements } from '../lots/counted-measurements'
 
 /** Points of a small ring; enough for four a period of order 264 at the size it is drawn. */
 const RING_POINTS = 1024

@@ -42,23 +42,39 @@ const KNOWN: Readonly<Record<string, Entry>> = {
   'angleSensorEccentricity': ['Eccentricity of the angle sensor', 'rad', null],
 }
 
-const ORDER_KEY = /^order\.([1-9]\d{0,3})$/
+const ORDER_KEY = /^order\.([1-9]\d{0,3})(\.ofRated|\.ofDesign)?$/
+const RIPPLE_KEY = /^rippleRatio\.([A-Za-z]+)$/
 
-/** The fixed characteristic keys in the order in which they are shown; `order.K` comes on top of them. */
+/** The ripple ratio's definitions in words; `rippleRatio` itself is the one that the sheet names. */
+const RIPPLE_WORDS: Readonly<Record<string, string>> = {
+  peakToPeakOverRated: 'peak to peak ÷ rated', halfPeakToPeakOverRated: 'half peak to peak ÷ rated', rmsOverRated: 'RMS ÷ rated', peakToPeakOverMean: 'peak to peak ÷ mean',
+  halfPeakToPeakOverMean: 'half peak to peak ÷ mean', maxMinusMinOverMaxPlusMin: '(max − min) ÷ (max + min)', largestDeviationOverMean: 'largest deviation ÷ mean', rmsOverMean: 'RMS ÷ mean',
+}
+
+/** The fixed characteristic keys in the order in which they are shown; `order.K`, `order.K.ofRated`, `order.K.ofDesign` and `rippleRatio.DEFINITION` come on top of them. */
 export const CHARACTERISTIC_KEYS: readonly string[] = Object.keys(KNOWN)
 
 /**
- * Whether a text is the key of a characteristic: one of `CHARACTERISTIC_KEYS` or `order.K`, K from 1 to 9999.
+ * Whether a text is the key of a characteristic: one of `CHARACTERISTIC_KEYS`, `order.K` (K from 1 to 9999) with or without a share, or a ripple ratio by name.
  *
  * @param key any text
  * @returns true when it is
  */
 export function isCharacteristicKey(key: string): boolean {
-  return Object.hasOwn(KNOWN, key) || ORDER_KEY.test(key)
+  return Object.hasOwn(KNOWN, key) || ORDER_KEY.test(key) || Object.hasOwn(RIPPLE_WORDS, RIPPLE_KEY.exec(key)?.[1] ?? '')
 }
 
 const KINDS: Readonly<Record<CharacteristicUnit, CharacteristicKind>> = { 'N·m': 'torque', '%': 'ratio', '1': 'ratio', 'rad': 'angle' }
 const DISPLAY_UNITS = { 'N·m': 'mN·m', '%': '%', '1': '', 'rad': '°' } as const
+
+function entryOf(key: string): Entry | undefined {
+  const order = ORDER_KEY.exec(key)
+  if (order?.[2]) return [`Order ${order[1]}, of the ${order[2] === '.ofRated' ? 'rated torque' : 'design order'}`, '%', 'upper']
+  if (order) return [`Order ${order[1]}`, 'N·m', 'upper']
+  const ripple = RIPPLE_WORDS[RIPPLE_KEY.exec(key)?.[1] ?? '']
+  if (ripple) return [`Ripple ratio, ${ripple}`, '%', 'upper']
+  return Object.hasOwn(KNOWN, key) ? KNOWN[key] : undefined
+}
 
 /**
  * Name, unit and usual limits of a characteristic.
@@ -68,8 +84,7 @@ const DISPLAY_UNITS = { 'N·m': 'mN·m', '%': '%', '1': '', 'rad': '°' } as con
  * @throws RangeError when the key is not known
  */
 export function describeCharacteristic(key: string): CharacteristicDescription {
-  const order = ORDER_KEY.exec(key)
-  const entry: Entry | undefined = order ? [`Order ${order[1]}`, 'N·m', 'upper'] : Object.hasOwn(KNOWN, key) ? KNOWN[key] : undefined
+  const entry = entryOf(key)
   if (!entry) {
     throw new RangeError(`describeCharacteristic: key must be order.K or one of ${CHARACTERISTIC_KEYS.join(', ')}, got ${key}`)
   }

@@ -1,0 +1,19 @@
+import type { RenderedFile } from './render-file'
+
+/** Ways in which a rig's file goes wrong. */
+export type FileFault = 'text-in-a-number' | 'half-a-turn' | 'clipped'
+
+/** A bad file made from a good comma-separated one. */
+export function spoil(file: RenderedFile, fault: FileFault): RenderedFile {
+  const rows = Buffer.from(file.bytes).toString('utf8').trimEnd().split('\n')
+  return { name: file.name, bytes: new Uint8Array(Buffer.from(`${SPOILERS[fault](rows).join('\n')}\n`)) }
+}
+
+const SPOILERS: Record<FileFault, (rows: string[]) => string[]> = {
+  'text-in-a-number': rows => rows.map((row, index) => index === Math.floor(rows.length / 3) ? row.replace(/[^,]+$/, '---') : row),
+  'half-a-turn': rows => rows.filter((row, index) => index === 0 || Number(row.split(',')[1]) < 180),
+  'clipped': (rows) => {
+    const largest = Math.max(...rows.slice(1).map(row => Number(row.split(',')[2])))
+    return rows.map((row, index) => index > 0 && Number(row.split(',')[2]) > 0.55 * largest ? row.replace(/[^,]+$/, (0.55 * largest).toFixed(5)) : row)
+  },
+}

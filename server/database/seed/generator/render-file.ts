@@ -1,0 +1,66 @@
+import type { ModelMotor } from './motor-model'
+import type { SeededRandom } from './random'
+
+/** How a rig writes its files. */
+export type Dialect = 'plain' | 'semicolon' | 'tab-radian' | 'space-run' | 'counts-ounce' | 'gram-force' | 'unnamed'
+
+export interface SweepInput {
+  motor: ModelMotor
+  serial: string
+  dialect: Dialect
+  rowsPerDirection: number
+  directions: 'both' | 'forward' | 'reverse'
+  /** Standard deviation of a torque reading, N·m. */
+  noiseNm: number
+  /** Transducer's zero, N·m. */
+  zeroNm: number
+  random: SeededRandom
+}
+
+export interface RenderedFile { name: string; bytes: Uint8Array }
+
+const COUNTS = 16384
+const OUNCE_INCH_NM = 0.00706155181422604
+const GRAM_CM_NM = 9.80665e-5
+
+interface Reading { direction: 1 | -1; counts: number; torqueNm: number }
+
+/** Turns the motor slowly, one turn each way and a little more, and writes what sensor and encoder (16 384 counts, read downward) say. */
+export function renderFile(input: SweepInput): RenderedFile {
+  const readings = [
+    ...(input.directions === 'reverse' ? [] : sweep(input, 1)),
+    ...(input.directions === 'forward' ? [] : sweep(input, -1)),
+  ]
+  const suffix = input.directions === 'both' ? '' : input.directions === 'forward' ? '_fwd' : '_rev'
+  const { text, extension, latin1 } = WRITERS[input.dialect](readings, input)
+  return { name: `${input.serial}${suffix}.${extension}`, bytes: new Uint8Array(Buffer.from(text, latin1 ? 'latin1' : 'utf8')) }
+}
+
+function sweep(input: SweepInput, direction: 1 | -1): Reading[] {
+  const { motor, rowsPerDirection: rows, random } = input
+  return Array.from({ length: rows }, (_, index) => {
+    const share = (index + 0.3 * random.uniform()) / rows
+    const angle = 2 * Math.PI * (direction === 1 ? share : 1 - share)
+    const torqueNm = input.zeroNm + motor.torqueNm(angle) + direction * motor.frictionNm + input.noiseNm * random.gaussian()
+    return { direction, counts: Math.floor(angle / (2 * Math.PI) * COUNTS), torqueNm }
+  })
+}
+
+const degrees = (reading: Reading, digits = 4) => (360 * reading.counts / COUNTS).toFixed(digits)
+const word = (reading: Reading) => reading.direction === 1 ? 'fwd' : 'rev'
+interface Written { text: string; extension: string; latin1?: boolean }
+
+const WRITERS: Record<Dialect, (readings: Reading[], input: SweepInput) => Written> = {
+  'plain': readings => ({ extension: 'csv', text: lines(['direction,angle_deg,torque_mN.m', ...readings.map(row => `${word(row)},${degrees(row)},${(row.torqueNm * 1e3).toFixed(5)}`)]) }),
+  'semicolon': (readings, input) => ({
+    extension: 'csv', latin1: true,
+    text: lines([`# motor ${input.serial}`, '# slow sweep, one turn each way', 'direction;angle [°];torque [mNm]', ...readings.map(row => `${word(row)};${degrees(row).replace('.', ',')};${(row.torqueNm * 1e3).toFixed(5).replace('.', ',')}`)], '\r\n'),
+  }),
+  'tab-radian': readings => ({ extension: 'tsv', text: lines(['direction\tangle (rad)\ttorque (N.m)', ...readings.map(row => `${row.direction}\t${(2 * Math.PI * row.counts / COUNTS).toFixed(7)}\t${row.torqueNm.toFixed(8)}`)]) }),
+  'space-run': readings => ({ extension: 'txt', text: lines(['angle_deg torque_mN.m', ...readings.map(row => `${degrees(row)} ${(row.torqueNm * 1e3).toFixed(5)}`)]) }),
+  'counts-ounce': readings => ({ extension: 'csv', text: lines([`direction,angle_counts/${COUNTS},torque_ozf.in`, ...readings.map(row => `${word(row)},${row.counts},${(row.torqueNm / OUNCE_INCH_NM).toFixed(6)}`)]) }),
+  'gram-force': readings => ({ extension: 'csv', text: lines(['direction,angle_deg,torque_gf.cm', ...readings.map(row => `${word(row)},${degrees(row)},${(row.torqueNm / GRAM_CM_NM).toFixed(4)}`)]) }),
+  'unnamed': readings => ({ extension: 'csv', text: lines(['direction,angle_deg,torque', ...readings.map(row => `${word(row)},${degrees(row)},${(row.torqueNm * 1e3).toFixed(5)}`)]) }),
+}
+
+const lines = (rows: string[], end = '\n') => rows.join(end) + end
