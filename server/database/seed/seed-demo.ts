@@ -39,7 +39,11 @@ export async function seedDemo(services: Services, size: 'small' | 'full'): Prom
   const stage = new Stage(services, today)
   await seedPeopleAndParts(stage)
   const past = pastLots(today, size)
-  for (const lot of past) await playLot(stage, lot)
+  for (const lot of past) {
+    await stage.playUntil(lot.daysAgo)
+    await playLot(stage, lot)
+  }
+  await stage.playUntil(0)
   for (const lot of lotsToday(today)) {
     if (lot.received) stage.receive({ ...lot, daysAgo: 0.03 }, lot.serialsListed)
   }
@@ -59,6 +63,7 @@ class Stage {
   time: number
   private readonly random = makeRandom('demo')
   private readonly actors = new Map<string, Actor>()
+  private readonly agenda: { daysAgo: number; hour: number; act: () => Promise<void> | void }[] = []
 
   constructor(readonly services: Services, readonly today: Date) {
     this.time = today.getTime() - 450 * DAY_MS
@@ -77,16 +82,25 @@ class Stage {
     return { ...this.acting, actor: this.actors.get(email)! }
   }
 
-  /** The stage's clock, for a context made earlier. */
-  get now(): Pick<Services, 'clock'> {
-    return { clock: () => new Date(this.time) }
-  }
-
   /** The notices of the past arrived; they are not sent again. */
   deliverMail(nonconformanceId: number): void {
     const { db } = this.services
     db.update(notices).set({ state: 'sent', sentAt: sql`${notices.createdAt}`, attempts: 1 }).where(eq(notices.nonconformanceId, nonconformanceId)).run()
     db.update(nonconformances).set({ state: 'notified' }).where(and(eq(nonconformances.id, nonconformanceId), eq(nonconformances.state, 'open'))).run()
+  }
+
+  /** Something that happens later, between the lots that come until then. */
+  later(daysAgo: number, hour: number, act: () => Promise<void> | void): void {
+    this.agenda.push({ daysAgo, hour, act })
+    this.agenda.sort((a, b) => b.daysAgo - a.daysAgo || a.hour - b.hour)
+  }
+
+  async playUntil(daysAgo: number): Promise<void> {
+    while (this.agenda.length > 0 && this.agenda[0]!.daysAgo > daysAgo) {
+      const next = this.agenda.shift()!
+      this.at(next.daysAgo, next.hour)
+      await next.act()
+    }
   }
 
   at(daysAgo: number, hour: number): void {
@@ -151,28 +165,26 @@ async function playLot(stage: Stage, lot: DemoLot): Promise<void> {
   if (evidence.lotVerdict.outcome === 'open') throw new Error(`The demo lot ${lot.supplierLot} cannot be decided: ${evidence.lotVerdict.sentence}`)
   const outcome = evidence.lotVerdict.outcome === 'accept' ? 'accepted' : 'rejected'
   await decideLot(inspector, number, { password: DEMO_PASSWORD, outcome, evidenceHash: evidence.hash, reason: '' })
-  if (outcome === 'rejected') await playReturn(stage, lot, number)
+  if (outcome === 'rejected') playReturn(stage, lot, number)
 }
 
 /** What followed a rejection: notice, acknowledgement, answer, disposition, and the closing when it is long ago. */
-async function playReturn(stage: Stage, lot: DemoLot, number: string): Promise<void> {
+function playReturn(stage: Stage, lot: DemoLot, number: string): void {
   const { db } = stage.services
   const found = db.select({ id: nonconformances.id, number: nonconformances.number }).from(nonconformances).innerJoin(lots, eq(lots.id, nonconformances.lotId)).where(eq(lots.number, number)).get()!
   stage.deliverMail(found.id)
-  if (lot.daysAgo < 25) return
-  const contact = stage.as(PEOPLE.find(person => person.supplier === lot.supplier)!.email)
+  const contact = PEOPLE.find(person => person.supplier === lot.supplier)!.email
   const engineer = 'mara@kestrelfold.example'
-  stage.at(lot.daysAgo - 2, 10)
-  acknowledgeNonconformance({ ...contact, ...stage.now }, found.number)
-  stage.at(lot.daysAgo - 4, 11)
-  await decideDisposition(stage.as(engineer), found.number, { disposition: lot.disposition ?? 'return-to-supplier', reason: 'Agreed with purchasing', password: DEMO_PASSWORD })
-  stage.at(lot.daysAgo - 8, 15)
-  answerNonconformance({ ...contact, ...stage.now }, found.number, ANSWERS[lot.story ?? ''] ?? ANSWERS['']!)
-  if (lot.daysAgo < 60) return
-  stage.at(lot.daysAgo - 12, 14)
-  reviewAnswer(stage.as(engineer), found.number, { outcome: 'accepted', reason: 'Plausible; we watch the next three lots' })
-  stage.at(lot.daysAgo - 50, 14)
-  closeNonconformance(stage.as(engineer), found.number, 'Verified on the next lots')
+  const steps: [number, number, () => Promise<void> | void][] = [
+    [2, 10, () => void acknowledgeNonconformance(stage.as(contact), found.number)],
+    [4, 11, () => decideDisposition(stage.as(engineer), found.number, { disposition: lot.disposition ?? 'return-to-supplier', reason: 'Agreed with purchasing', password: DEMO_PASSWORD })],
+    [8, 15, () => answerNonconformance(stage.as(contact), found.number, ANSWERS[lot.story ?? ''] ?? ANSWERS['']!)],
+    [12, 14, () => reviewAnswer(stage.as(engineer), found.number, { outcome: 'accepted', reason: 'Plausible; we watch the next three lots' })],
+    [50, 14, () => closeNonconformance(stage.as(engineer), found.number, 'Verified on the next lots')],
+  ]
+  // What is recent stays open, so that there is something to do.
+  const played = lot.daysAgo < 25 ? 0 : lot.daysAgo < 60 ? 3 : steps.length
+  for (const [days, hour, act] of steps.slice(0, played)) if (lot.daysAgo - days > 0.5) stage.later(lot.daysAgo - days, hour, act)
 }
 
 const ANSWERS: Record<string, SupplierAnswer> = {

@@ -50,9 +50,9 @@ const SERIES: readonly Series[] = [
   { supplier: 'TUVALO', part: 'KF-4412-C', count: 15, first: 415, last: 20, running: 41, made: index => ({ made: { rotorScatter: 0.008 + 0.0016 * Math.max(0, index - 4) + (index >= 13 ? 0.011 : 0) }, story: 'magnet placement drifts', disposition: 'return-to-supplier' }) },
   { supplier: 'AMBREL', part: 'KF-4412-C', count: 10, first: 400, last: 40, running: 12, made: () => ({ made: { designPeakToPeakNm: 3.7e-3 } }) },
   // A new stamping tool, 200 days ago: the stator side steps up.
-  { supplier: 'SALTMARSH', part: 'KF-4424-A', count: 12, first: 410, last: 12, running: 61, made: (_, daysAgo) => ({ made: { statorScatter: daysAgo < 200 ? 0.015 : 0.006 }, story: 'stator stamping changed', disposition: 'concession' }) },
+  { supplier: 'SALTMARSH', part: 'KF-4424-A', count: 12, first: 410, last: 12, running: 61, made: (index, daysAgo) => ({ made: { statorScatter: daysAgo < 200 ? (index === 9 ? 0.04 : 0.015) : 0.006 }, story: 'stator stamping changed', disposition: 'concession' }) },
   // Bad early, better after the corrective action of a rejection.
-  { supplier: 'AMBREL', part: 'KF-3098-B', count: 9, first: 405, last: 25, running: 30, made: (index, daysAgo) => ({ made: { statorScatter: daysAgo > 300 ? (index === 2 ? 0.036 : 0.014) : 0.007 }, story: 'improves after corrective action', disposition: 'sort' }) },
+  { supplier: 'AMBREL', part: 'KF-3098-B', count: 9, first: 405, last: 25, running: 30, made: (index, daysAgo) => ({ made: { statorScatter: daysAgo > 300 ? (index === 2 ? 0.085 : 0.03) : 0.007 }, story: 'improves after corrective action', disposition: 'sort' }) },
   { supplier: 'NORRHAVEN', part: 'KF-1548-A', count: 7, first: 395, last: 30, running: 22, made: () => ({ made: {} }) },
   { supplier: 'NORRHAVEN', part: 'KF-2350-A', count: 6, first: 380, last: 45, running: 51, made: () => ({ made: {} }) },
 ]
@@ -66,7 +66,7 @@ export function pastLots(today: Date, size: 'small' | 'full'): DemoLot[] {
       ...series.made(index, daysAgo),
     }
   }))
-  const bad = all.find(lot => lot.part === 'KF-3098-B' && (lot.made.statorScatter ?? 0) > 0.03)!
+  const bad = all.find(lot => lot.part === 'KF-3098-B' && (lot.made.statorScatter ?? 0) > 0.05)!
   const again: DemoLot = { ...bad, supplierLot: `${bad.supplierLot}-S`, quantity: bad.quantity - 60, daysAgo: bad.daysAgo - 14, made: { statorScatter: 0.008 }, resubmissionOf: bad.supplierLot, story: 're-submitted after sorting' }
   const sorted = [...all, again].sort((a, b) => b.daysAgo - a.daysAgo)
   if (size === 'full') return sorted
@@ -84,7 +84,7 @@ export function lotsToday(today: Date): WaitingLot[] {
       ...common, supplier: 'AMBREL', part: 'KF-3098-B', supplierLot: lotNumber('AMBREL', today, 0, 97), quantity: 90, made: { statorScatter: 0.006, rotorScatter: 0.007 }, received: true, title: 'Shoulder servos, with files of all kinds',
       dialects: ['plain', 'semicolon', 'tab-radian', 'space-run', 'counts-ounce', 'gram-force', 'unnamed', 'plain'], faults: ['text-in-a-number', 'half-a-turn'],
     },
-    { ...common, supplier: 'SALTMARSH', part: 'KF-4424-A', supplierLot: lotNumber('SALTMARSH', today, 0, 98), quantity: 150, made: { rotorScatter: 0.04, statorScatter: 0.008 }, received: false, serialsListed: false, title: 'Elbow outrunners of Saltmarsh Rotary, still at the gate' },
+    { ...common, supplier: 'TUVALO', part: 'KF-4412-C', supplierLot: lotNumber('TUVALO', today, 0, 98), quantity: 400, made: { rotorScatter: 0.04 }, received: false, title: 'Wrist outrunners of Tuvalo Precision Drives, at the gate' },
   ]
 }
 
