@@ -1,12 +1,15 @@
 import { eq } from 'drizzle-orm'
 import { describe, expect, it } from 'vitest'
+import { lotListSchema } from '#shared/contracts/lots'
 import { nonconformanceListSchema } from '#shared/contracts/returns'
 import { decisions, lots } from '../../server/database/schema/lots'
 import { logbook } from '../../server/database/schema/logbook'
+import { measurements } from '../../server/database/schema/measurements'
 import { people, suppliers } from '../../server/database/schema/people'
 import { nonconformanceEntries, nonconformances, notices } from '../../server/database/schema/returns'
 import type { Context, Services } from '../../server/services/context'
 import { DomainError } from '../../server/services/domain-error'
+import { listLots } from '../../server/services/lots/list-lots'
 import { csvCell, getLotResults, resultsAsCsv } from '../../server/services/lots/lot-results'
 import { resendNotice } from '../../server/services/notices/resend-notice'
 import { acknowledgeNonconformance } from '../../server/services/returns/acknowledge'
@@ -282,6 +285,21 @@ describe('listNonconformances', () => {
     expect(listNonconformances(engineer, query()).rows).toHaveLength(25)
     expect(listNonconformances(engineer, query({ page: 2 })).rows).toHaveLength(1)
     expect(listNonconformances(engineer, query({ page: 3 })).rows).toEqual([])
+  })
+})
+
+describe('the supplier\'s list of lots', () => {
+  it('holds its own lots with the motors measured and nonconforming, counting the first attempt that was not voided', async () => {
+    const { services, plant, supplier, foreign, rejected } = await setUp()
+    const list = (context: Context) => listLots(context, lotListSchema.parse({})).rows.map(({ number, sampleSize, measured, nonconforming }) => ({ number, sampleSize, measured, nonconforming }))
+    expect(list(supplier)).toEqual([{ number: rejected.lot.number, sampleSize: 5, measured: 5, nonconforming: 2 }])
+    expect(list(foreign)).toEqual([])
+    const failed = services.db.select().from(measurements).where(eq(measurements.verdict, 'fail')).all()[0]!
+    const again = { ...failed, id: undefined, attempt: 2, verdict: 'pass' as const, reason: 'coupling slipped' }
+    services.db.insert(measurements).values(again).run()
+    expect(list(supplier)[0]).toMatchObject({ measured: 5, nonconforming: 2 })
+    services.db.update(measurements).set({ voidedAt: services.clock().toISOString(), voidedById: plant.engineer.personId, voidReason: 'coupling slipped' }).where(eq(measurements.id, failed.id)).run()
+    expect(list(supplier)[0]).toMatchObject({ measured: 5, nonconforming: 1 })
   })
 })
 

@@ -1,3 +1,4 @@
+import { formatCount } from '#shared/compute/sampling/wording'
 import { composeMail } from './layout'
 import type { MailBlock, MailContent } from './layout'
 
@@ -38,7 +39,7 @@ export function rejectionMail(notice: RejectionNotice): MailContent {
 
 function opening({ contactName, lot, part, nonconformance, answerDueOn, verdictSentence, decisionReason }: RejectionNotice): MailBlock[] {
   const facts: [string, string][] = [
-    ['Your lot', lot.supplierLot], ['Part', `${part.number}, ${part.name}`], ['Quantity', lot.quantity.toLocaleString('en-GB')],
+    ['Your lot', lot.supplierLot], ['Part', `${part.number}, ${part.name}`], ['Quantity', `${formatCount(lot.quantity)} motors`],
     ...(lot.orderNumber ? [['Order', lot.orderNumber] as [string, string]] : []),
     ['Our number', nonconformance], ['Please answer by', answerDueOn],
   ]

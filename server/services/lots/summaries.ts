@@ -58,7 +58,7 @@ function conditions(db: Pick<Reader, 'selectDistinct'>, filter: LotFilter): SQL 
 /** Motors judged and nonconforming per lot, counting the first attempt of each that was not voided. */
 function progressOf(db: Pick<Reader, 'select'>, lotIds: number[]): Map<number, { measured: number; nonconforming: number }> {
   if (lotIds.length === 0) return new Map()
-  const first = db.select({ sampleId: measurements.sampleId, attempt: sql<number>`min(${measurements.attempt})`.as('attempt') }).from(measurements)
+  const first = db.select({ sampleId: measurements.sampleId, attempt: sql<number>`min(${measurements.attempt})`.as('first_attempt') }).from(measurements)
     .where(and(inArray(measurements.lotId, lotIds), isNull(measurements.voidedAt))).groupBy(measurements.sampleId).as('first')
   const rows = db.select({
     lotId: measurements.lotId,
