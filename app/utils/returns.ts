@@ -9,6 +9,9 @@ const STATES: Record<NonconformanceState, string> = {
 /** What a nonconformance waits for, in a word or three. */
 export const nonconformanceStateWord = (state: NonconformanceState): string => STATES[state]
 
+/** Whether the supplier is asked to do something. */
+export const awaitsSupplier = (state: NonconformanceState): boolean => ['open', 'notified', 'acknowledged', 'sent-back'].includes(state)
+
 export const DISPOSITION_WORDS: Record<Disposition, { title: string; text: string }> = {
   'return-to-supplier': { title: 'Return to the supplier', text: 'The whole lot goes back.' },
   'sort': { title: 'Sort all', text: 'Every motor is measured; the nonconforming ones are taken out.' },
