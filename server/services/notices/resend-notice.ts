@@ -29,6 +29,8 @@ export function resendNotice(context: Context, number: string, noticeId: number)
     else sendAgain(context, tx, notice)
     appendToLogbook(context, tx, { actorId: context.actor.personId, action: 'notice.sent-again', subjectKind: 'notice', subjectId: notice.id, content: { nonconformance: number, kind: notice.kind } })
   }, { behavior: 'immediate' })
+  // The certificate may be an old one that was never drawn.
+  context.wake('papers')
   context.wake('outbox')
 }
 

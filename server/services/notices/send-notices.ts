@@ -7,6 +7,7 @@ import type { MailMessage, MailTransport } from '../../mail/transport'
 import { now } from '../context'
 import type { Services } from '../context'
 import { appendToLogbook } from '../logbook/append'
+import { getPaperPdf } from '../papers/get-paper-pdf'
 import { changeState } from '../returns/change-state'
 import { writeEntry } from '../returns/write-entry'
 
@@ -63,11 +64,9 @@ function nextDue(services: Services): Due | null {
 
 async function messageOf(services: Services, { notice, paper }: Due): Promise<MailMessage> {
   const attachments: MailMessage['attachments'] = []
-  if (paper?.pdfSha256) {
-    const bytes = await services.files.get(paper.pdfSha256)
-    // A larger one is reached by the link that every such mail carries.
-    if (bytes.length <= LARGEST_ATTACHMENT) attachments.push({ name: `${paper.number}.pdf`, type: 'application/pdf', bytes })
-  }
+  const pdf = paper ? await getPaperPdf(services, paper) : null
+  // A larger one is reached by the link that every such mail carries.
+  if (pdf && pdf.bytes.length <= LARGEST_ATTACHMENT) attachments.push(pdf)
   return { messageId: notice.messageId, to: notice.recipientAddress, subject: notice.subject, text: notice.text, html: notice.html, attachments }
 }
 

@@ -16,13 +16,13 @@ import { getNonconformance } from './find-nonconformance'
 import type { Nonconformance } from './find-nonconformance'
 import { writeEntry } from './write-entry'
 
-/** What is decided about the lot, for the supplier. */
+/** What is decided about the lot, for both sides. */
 const SENTENCES: Record<Disposition, string> = {
-  'return-to-supplier': 'The lot is returned to you.',
-  'sort': 'Every motor of the lot is measured and the nonconforming ones are taken out.',
-  'rework': 'The lot is reworked.',
-  'concession': 'The lot is used under a concession, although it does not meet the plan.',
-  'scrap': 'The lot is scrapped.',
+  'return-to-supplier': 'Return to the supplier: the whole lot goes back.',
+  'sort': 'Sort all: every motor of the lot is measured and the nonconforming ones are taken out.',
+  'rework': 'Rework: the lot is put right and measured again.',
+  'concession': 'Concession: the lot is used, although it does not meet the plan.',
+  'scrap': 'Scrap: the whole lot is destroyed.',
 }
 
 /**
@@ -40,7 +40,7 @@ export async function decideDisposition(context: Context, number: string, input:
     const found = getNonconformance({ db: tx, actor: context.actor }, number)
     moveLot(tx, found)
     tx.update(nonconformances).set({ disposition, dispositionReason: reason, dispositionById: context.actor.personId, dispositionAt: now(context) }).where(eq(nonconformances.id, found.id)).run()
-    writeEntry(context, tx, { nonconformanceId: found.id, kind: 'disposition', text: reason, byId: context.actor.personId })
+    writeEntry(context, tx, { nonconformanceId: found.id, kind: 'disposition', text: `${SENTENCES[disposition]}\n${reason}`, byId: context.actor.personId })
     writeUpdateNotices(context, tx, found, { to: 'supplier', headline: 'what happens to the lot is decided', paragraphs: [SENTENCES[disposition], reason] })
     appendToLogbook(context, tx, { actorId: context.actor.personId, action: 'nonconformance.disposition', subjectKind: 'nonconformance', subjectId: number, content: { disposition, signed } })
   }, { behavior: 'immediate' })
