@@ -1,5 +1,6 @@
-/** Lets a page send a text through the scan field, as if it had been scanned. */
+/** The text in the scan field; a page may send one through it, as if it had been scanned. */
 export const useScanStore = defineStore('scan', () => {
+  const text = ref('')
   const request = ref('')
-  return { request, send: (text: string) => void (request.value = text), done: () => void (request.value = '') }
+  return { text, request, send: (label: string) => void (request.value = label), done: () => void (request.value = '') }
 })

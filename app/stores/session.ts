@@ -7,6 +7,8 @@ export const useSessionStore = defineStore('session', () => {
   const plantName = ref('')
   const demo = ref(false)
   const loaded = ref(false)
+  /** When this page last asked, ms since it was opened; on the server always 0. */
+  const checkedAt = ref(0)
 
   async function load(): Promise<void> {
     const session = await useRequestFetch()<SessionResponse>('/api/session')
@@ -15,7 +17,8 @@ export const useSessionStore = defineStore('session', () => {
     plantName.value = session.plantName
     demo.value = session.demo
     loaded.value = true
+    if (import.meta.client) checkedAt.value = performance.now()
   }
 
-  return { person, timeZone, plantName, demo, loaded, load }
+  return { person, timeZone, plantName, demo, loaded, checkedAt, load }
 })
