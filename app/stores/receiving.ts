@@ -10,6 +10,9 @@ export const useReceivingStore = defineStore('receiving', () => {
     notes.value = remarks
   }
 
+  /** After the delivery is received, or when the form is opened without a label. */
+  const clear = () => prefill(empty(), [])
+
   const toQuery = () => Object.fromEntries(Object.entries(form.value).filter(([, value]) => value !== '' && value !== null).map(([key, value]) => [key, String(value)]))
 
   function fromQuery(query: Record<string, unknown>): void {
@@ -18,7 +21,7 @@ export const useReceivingStore = defineStore('receiving', () => {
     form.value = { supplierCode: text('supplierCode'), partNumber: text('partNumber'), supplierLot: text('supplierLot'), quantity: Number.isInteger(quantity) && quantity > 0 ? quantity : null, orderNumber: text('orderNumber') }
   }
 
-  return { form, notes, prefill, toQuery, fromQuery }
+  return { form, notes, prefill, clear, toQuery, fromQuery }
 })
 
 function empty(): ReceivingPrefill {

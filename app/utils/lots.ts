@@ -16,6 +16,7 @@ export const isRejected = (state: LotState): boolean => ['rejected', 'on-hold', 
 export const formatCount = (value: number): string => String(value).replaceAll(/\B(?=(\d{3})+$)/g, '\u00A0')
 
 /** What a lot waits for, as the Dock groups it. */
-export function waitsFor(lot: LotSummary): 'decide' | 'measure' {
+export function waitsFor(lot: LotSummary): 'decide' | 'measure' | 'disposition' {
+  if (lot.state === 'on-hold') return 'disposition'
   return lot.state === 'ready' ? 'decide' : 'measure'
 }

@@ -6,11 +6,11 @@ import { listLotSummaries } from './summaries'
 const DECIDED_SHOWN_DAYS = 3
 const DAY_MS = 86_400_000
 
-/** The lots here now, oldest first, and those decided in the last days, newest first. */
+/** The lots here now (rejected ones until their disposition), oldest first, and those decided in the last days, newest first. */
 export function listDock(context: Context): DockAnswer {
   const since = new Date(context.clock().getTime() - DECIDED_SHOWN_DAYS * DAY_MS).toISOString()
   return {
-    waiting: listLotSummaries(context.db, { states: ['received', 'drawn', 'measuring', 'ready'], limit: 200 }).rows,
+    waiting: listLotSummaries(context.db, { states: ['received', 'drawn', 'measuring', 'ready', 'on-hold'], limit: 200 }).rows,
     decided: listLotSummaries(context.db, { decidedSince: since, sort: { column: 'receivedAt', descending: true }, limit: 20 }).rows,
   }
 }
