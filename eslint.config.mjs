@@ -1,5 +1,6 @@
 // @ts-check
-import importX from 'eslint-plugin-import-x'
+import { fileURLToPath } from 'node:url'
+import importX, { createNodeResolver } from 'eslint-plugin-import-x'
 import withNuxt from './.nuxt/eslint.config.mjs'
 
 /**
@@ -19,7 +20,7 @@ export default withNuxt(
   { ignores: ['server/database/migrations/**'] },
   {
     plugins: { 'import-x': importX },
-    settings: { 'import-x/resolver': { typescript: { project: ['.nuxt/tsconfig.app.json', '.nuxt/tsconfig.server.json', '.nuxt/tsconfig.shared.json'] } } },
+    settings: { 'import-x/resolver-next': [createNodeResolver({ extensions: ['.ts', '.mjs', '.js'], alias: { '#shared': [fileURLToPath(new URL('./shared', import.meta.url))] } })], 'import-x/parsers': { '@typescript-eslint/parser': ['.ts'] } },
   },
   { files: ['shared/**/*.ts', 'server/**/*.ts'], rules: { 'import-x/no-cycle': ['error', { ignoreExternal: true }] } },
   { files: ['**/*.vue'], rules: { 'vue/multi-word-component-names': 'off', 'vue/max-lines-per-block': ['error', { template: 200, script: 200, skipBlankLines: true }] } },

@@ -9,7 +9,7 @@ export function useReturnsAction(number: MaybeRefOrGetter<string>) {
     busy.value = true
     error.value = null
     try {
-      await $fetch(`/api/nonconformances/${encodeURIComponent(toValue(number))}/${step}`, { method: 'POST', body })
+      await send(`/api/nonconformances/${encodeURIComponent(toValue(number))}/${step}`, body)
       return true
     }
     catch (failure) {

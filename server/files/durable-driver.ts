@@ -2,13 +2,14 @@ import { randomUUID } from 'node:crypto'
 import { open, mkdir, rename, rm } from 'node:fs/promises'
 import { dirname, join } from 'node:path'
 import { defineDriver } from 'unstorage'
+import type { Driver } from 'unstorage'
 import fsDriver from 'unstorage/drivers/fs'
 
 /**
  * unstorage's file-system driver with durable writes: temporary file, fsync, rename, fsync of the folder.
  * A name is therefore either absent or complete, even when the machine stops in the middle.
  */
-export const durableDriver = defineDriver((options: { base: string }) => {
+export const durableDriver = defineDriver((options: { base: string }): Driver<{ base: string }, never> => {
   const plain = fsDriver({ base: options.base, ignore: ['**/*.part'] })
 
   async function write(key: string, value: Uint8Array | string): Promise<void> {
@@ -40,5 +41,5 @@ export const durableDriver = defineDriver((options: { base: string }) => {
     }
   }
 
-  return { ...plain, name: 'durable-fs', setItem: write, setItemRaw: write }
+  return { ...plain, name: 'durable-fs', options, setItem: write, setItemRaw: write }
 })

@@ -50,7 +50,7 @@ export function startAnalysisPool(code: string, size: number = Math.min(4, avail
       else waiting?.reject(new Error(reply.error ?? 'the analysis gave no answer'))
       next()
     })
-    worker.on('error', (error) => {
+    worker.on('error', (error: Error) => {
       busy.get(worker)?.reject(error)
       busy.delete(worker)
       const at = idle.indexOf(worker)

@@ -12,6 +12,7 @@ export const ROUTE_ACCESS = {
   'DELETE /api/session': 'signed-in',
   'GET /api/session': 'public',
   'GET /api/demo': 'public',
+  'GET /api/demo/packing-lists/:supplierLot': ['inspector', 'engineer'],
   'GET /api/demo/lots/:number/files': ['inspector', 'engineer'],
 
   'POST /api/scans': ['inspector', 'engineer'],

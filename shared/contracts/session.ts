@@ -28,6 +28,9 @@ export type SessionResponse = z.infer<typeof sessionResponseSchema>
 /** What only a demo tells: whom to sign in as, and the labels to scan. */
 export const demoResponseSchema = z.object({
   accounts: z.array(z.object({ name: z.string(), role: z.string(), email: z.string(), password: z.string() })),
-  labels: z.array(z.object({ title: z.string(), text: z.string() })),
+  /** With the packing list (serial numbers) as a file. */
+  labels: z.array(z.object({ title: z.string(), text: z.string(), packingList: z.string() })),
 })
 export type DemoResponse = z.infer<typeof demoResponseSchema>
+
+export const packingListParamsSchema = z.object({ supplierLot: z.string().max(40) })

@@ -1,4 +1,4 @@
-import { asc, eq, isNull, sql } from 'drizzle-orm'
+import { asc, eq, inArray, isNull, sql } from 'drizzle-orm'
 import type { SupplierOverviewRow } from '#shared/contracts/drift'
 import { decisions, lots } from '../../database/schema/lots'
 import { measurements } from '../../database/schema/measurements'
@@ -12,9 +12,9 @@ export function getSupplierOverview(context: Context): SupplierOverviewRow[] {
   const byLot = new Map(db.select({
     id: lots.supplierId, lots: sql<number>`count(*)`, accepted: sql<number>`coalesce(sum(${decisions.outcome} = 'accepted'), 0)`, rejected: sql<number>`coalesce(sum(${decisions.outcome} = 'rejected'), 0)`, lastLotAt: sql<string>`max(${lots.receivedAt})`,
   }).from(lots).leftJoin(decisions, eq(decisions.lotId, lots.id)).groupBy(lots.supplierId).all().map(row => [row.id, row]))
-  const first = db.select({ id: sql<number>`min(${measurements.id})`.as('id') }).from(measurements).where(isNull(measurements.voidedAt)).groupBy(measurements.sampleId).as('first')
+  const first = db.select({ id: sql<number>`min(${measurements.id})` }).from(measurements).where(isNull(measurements.voidedAt)).groupBy(measurements.sampleId)
   const byMotor = new Map(db.select({ id: lots.supplierId, measured: sql<number>`count(*)`, nonconforming: sql<number>`coalesce(sum(${measurements.verdict} in ('fail', 'conditional-fail')), 0)` })
-    .from(measurements).innerJoin(first, eq(first.id, measurements.id)).innerJoin(lots, eq(lots.id, measurements.lotId)).groupBy(lots.supplierId).all().map(row => [row.id, row]))
+    .from(measurements).innerJoin(lots, eq(lots.id, measurements.lotId)).where(inArray(measurements.id, first)).groupBy(lots.supplierId).all().map(row => [row.id, row]))
   const byReturn = new Map(db.select({
     id: nonconformances.supplierId, open: sql<number>`sum(${nonconformances.closedAt} is null)`, days: sql<number | null>`avg(julianday(${nonconformances.acknowledgedAt}) - julianday(${nonconformances.openedAt}))`,
   }).from(nonconformances).groupBy(nonconformances.supplierId).all().map(row => [row.id, row]))

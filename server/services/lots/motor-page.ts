@@ -1,6 +1,7 @@
 import { asc, eq } from 'drizzle-orm'
 import { describeRule } from '#shared/compute/judging/rule'
 import { explainFailures } from '#shared/compute/judging/explain'
+import { isNonconforming } from '#shared/compute/judging/motor-verdict'
 import { designOrder } from '#shared/compute/motor/design-order'
 import { evaluateSeries } from '#shared/compute/torque/evaluate'
 import type { AttemptView, MotorPage } from '#shared/contracts/lots'
@@ -43,11 +44,17 @@ export function getMotorPage(context: Context, lotNumber: string, serial: string
       const match = /^order\.(\d+)$/.exec(limit.key)
       return match && limit.upper !== null && limit.unit === 'N·m' ? [{ order: Number(match[1]), upperNm: limit.upper }] : []
     }),
-    explanation: explainFailures([{ serial, verdict: measurement.judgement, orders: measurement.result.orders }]),
+    explanation: explanationOf(counted, serial),
     ...originOf(db, measurement),
     attempts: attemptsOf(db, sample.id, measurement.id),
     previousSerial: measuredSerials[place - 1] ?? null, nextSerial: measuredSerials[place + 1] ?? null,
   }
+}
+
+/** The lot page's sentence on this motor: compared with the conforming ones of its sample. */
+function explanationOf(counted: ReturnType<typeof countedMeasurements>, serial: string): string[] {
+  const motors = counted.flatMap(({ sample, measurement }) => measurement ? [{ serial: sample.serial ?? '', verdict: measurement.judgement, orders: measurement.result.orders }] : [])
+  return explainFailures(motors.filter(motor => motor.serial === serial || !isNonconforming(motor.verdict.verdict)))
 }
 
 function figuresOf(measurement: Measurement) {

@@ -3,7 +3,8 @@ import { formatQuantity } from '#shared/compute/judging/quantities'
 import type { UploadAnswer } from '#shared/contracts/lots'
 import type { Reader } from '../../database/client'
 import { samples } from '../../database/schema/lots'
-import { measurements, uploads } from '../../database/schema/measurements'
+import type { uploads } from '../../database/schema/measurements';
+import { measurements } from '../../database/schema/measurements'
 
 const VERDICT_WORDS = { 'pass': 'conforms', 'conditional-pass': 'conforms, inside the guard band', 'conditional-fail': 'does not conform, inside the guard band', 'fail': 'does not conform' } as const
 

@@ -1,7 +1,7 @@
 import type { RenderedFile } from './render-file'
 
 /** Ways in which a rig's file goes wrong. */
-export type FileFault = 'text-in-a-number' | 'half-a-turn' | 'clipped'
+export type FileFault = 'text-in-a-number' | 'not-a-number' | 'half-a-turn' | 'clipped'
 
 /** A bad file made from a good comma-separated one. */
 export function spoil(file: RenderedFile, fault: FileFault): RenderedFile {
@@ -11,6 +11,7 @@ export function spoil(file: RenderedFile, fault: FileFault): RenderedFile {
 
 const SPOILERS: Record<FileFault, (rows: string[]) => string[]> = {
   'text-in-a-number': rows => rows.map((row, index) => index === Math.floor(rows.length / 3) ? row.replace(/[^,]+$/, '---') : row),
+  'not-a-number': rows => rows.map((row, index) => index === Math.floor(rows.length / 2) ? row.replace(/[^,]+$/, 'NaN') : row),
   'half-a-turn': rows => rows.filter((row, index) => index === 0 || Number(row.split(',')[1]) < 180),
   'clipped': (rows) => {
     const largest = Math.max(...rows.slice(1).map(row => Number(row.split(',')[2])))

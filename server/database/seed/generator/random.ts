@@ -10,11 +10,11 @@ export interface SeededRandom {
 }
 
 /**
- * sfc32 (Small Fast Counter, 32 bits), seeded by hashing the text with FNV-1a; normal numbers by Box and Muller's polar method.
+ * sfc32 (Small Fast Counter, 32 bits), seeded by hashing the text (a number by its decimal digits) with FNV-1a; normal numbers by Box and Muller's polar method.
  *
  * Source: C. Doty-Humphrey, PractRand (sfc32, public domain); G. Marsaglia and T. A. Bray, SIAM Review 6(3), 1964 (polar method); from memory.
  */
-export function makeRandom(seed: string): SeededRandom {
+export function makeRandom(seed: number | string): SeededRandom {
   let [a, b, c, d] = [fnv(`${seed}/a`), fnv(`${seed}/b`), fnv(`${seed}/c`), 1]
   let spare: number | null = null
   const word = (): number => {

@@ -14,6 +14,8 @@ export interface SweepInput {
   noiseNm: number
   /** Transducer's zero, N·m. */
   zeroNm: number
+  /** What the zero wanders by from the first reading of the file to the last, N·m, evenly in time; none when left out. */
+  driftNm?: number
   random: SeededRandom
 }
 
@@ -25,23 +27,24 @@ const GRAM_CM_NM = 9.80665e-5
 
 interface Reading { direction: 1 | -1; counts: number; torqueNm: number }
 
-/** Turns the motor slowly, one turn each way and a little more, and writes what sensor and encoder (16 384 counts, read downward) say. */
+/** Turns the motor slowly, one turn each way, and writes what sensor and encoder (16 384 counts, read down to the last whole count) say. */
 export function renderFile(input: SweepInput): RenderedFile {
   const readings = [
-    ...(input.directions === 'reverse' ? [] : sweep(input, 1)),
-    ...(input.directions === 'forward' ? [] : sweep(input, -1)),
+    ...(input.directions === 'reverse' ? [] : sweep(input, 1, 0)),
+    ...(input.directions === 'forward' ? [] : sweep(input, -1, input.directions === 'both' ? 1 : 0)),
   ]
   const suffix = input.directions === 'both' ? '' : input.directions === 'forward' ? '_fwd' : '_rev'
   const { text, extension, latin1 } = WRITERS[input.dialect](readings, input)
   return { name: `${input.serial}${suffix}.${extension}`, bytes: new Uint8Array(Buffer.from(text, latin1 ? 'latin1' : 'utf8')) }
 }
 
-function sweep(input: SweepInput, direction: 1 | -1): Reading[] {
+function sweep(input: SweepInput, direction: 1 | -1, turnsBefore: number): Reading[] {
   const { motor, rowsPerDirection: rows, random } = input
+  const driftPerTurn = (input.driftNm ?? 0) / (input.directions === 'both' ? 2 : 1)
   return Array.from({ length: rows }, (_, index) => {
     const share = (index + 0.3 * random.uniform()) / rows
     const angle = 2 * Math.PI * (direction === 1 ? share : 1 - share)
-    const torqueNm = input.zeroNm + motor.torqueNm(angle) + direction * motor.frictionNm + input.noiseNm * random.gaussian()
+    const torqueNm = input.zeroNm + driftPerTurn * (turnsBefore + share) + motor.torqueNm(angle) + direction * motor.resistanceNm(angle) + input.noiseNm * random.gaussian()
     return { direction, counts: Math.floor(angle / (2 * Math.PI) * COUNTS), torqueNm }
   })
 }
