@@ -45,6 +45,7 @@ export function useLotUploads(lotNumber: string, rig: Ref<string>, refresh: () =
 
   async function send(row: UploadRow): Promise<void> {
     row.state = 'sending'
+    row.progress = 0
     const result = await post(row)
     if ('answer' in result) {
       row.answer = result.answer
@@ -87,8 +88,17 @@ export function useLotUploads(lotNumber: string, rig: Ref<string>, refresh: () =
     }, REFRESH_MS)
   }
 
+  /** Leaving the page in the middle is asked about once; what was sent is kept in any case. */
+  function onLeave(event: BeforeUnloadEvent): void {
+    if (busy.value) event.preventDefault()
+  }
+  onMounted(() => window.addEventListener('beforeunload', onLeave))
+
   const busy = computed(() => rows.value.some(row => row.state !== 'done' && row.state !== 'failed'))
   const clear = () => void (rows.value = rows.value.filter(row => row.state !== 'done' && row.state !== 'failed'))
-  onBeforeUnmount(() => clearTimeout(timer))
+  onBeforeUnmount(() => {
+    clearTimeout(timer)
+    window.removeEventListener('beforeunload', onLeave)
+  })
   return { rows, add, retry, clear, busy }
 }
