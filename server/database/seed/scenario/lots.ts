@@ -47,14 +47,15 @@ interface Series { supplier: string; part: string; count: number; first: number;
 /** The fourteen months before today, as five stories and quiet lots between them. */
 const SERIES: readonly Series[] = [
   // Magnets drift: rotor scatter rises lot by lot until lots fail.
-  { supplier: 'TUVALO', part: 'KF-4412-C', count: 15, first: 415, last: 20, running: 41, made: index => ({ made: { rotorScatter: 0.008 + 0.0016 * Math.max(0, index - 4) + (index >= 13 ? 0.011 : 0) }, story: 'magnet placement drifts', disposition: 'return-to-supplier' }) },
+  { supplier: 'TUVALO', part: 'KF-4412-C', count: 15, first: 415, last: 20, running: 41, made: index => ({ made: { rotorScatter: 0.008 + 0.0016 * Math.max(0, index - 4) + (index >= 13 ? 0.028 : 0) }, story: 'magnet placement drifts', disposition: 'return-to-supplier' }) },
   { supplier: 'AMBREL', part: 'KF-4412-C', count: 10, first: 400, last: 40, running: 12, made: () => ({ made: { designPeakToPeakNm: 3.7e-3 } }) },
   // A new stamping tool, 200 days ago: the stator side steps up.
-  { supplier: 'SALTMARSH', part: 'KF-4424-A', count: 12, first: 410, last: 12, running: 61, made: (index, daysAgo) => ({ made: { statorScatter: daysAgo < 200 ? (index === 9 ? 0.04 : 0.015) : 0.006 }, story: 'stator stamping changed', disposition: 'concession' }) },
+  { supplier: 'SALTMARSH', part: 'KF-4424-A', count: 12, first: 410, last: 12, running: 61, made: (index, daysAgo) => ({ made: { statorScatter: daysAgo < 200 ? (index === 9 ? 0.06 : 0.015) : 0.006 }, story: 'stator stamping changed', disposition: 'concession' }) },
   // Bad early, better after the corrective action of a rejection.
-  { supplier: 'AMBREL', part: 'KF-3098-B', count: 9, first: 405, last: 25, running: 30, made: (index, daysAgo) => ({ made: { statorScatter: daysAgo > 300 ? (index === 2 ? 0.085 : 0.03) : 0.007 }, story: 'improves after corrective action', disposition: 'sort' }) },
+  { supplier: 'AMBREL', part: 'KF-3098-B', count: 9, first: 405, last: 25, running: 30, made: (index, daysAgo) => ({ made: { statorScatter: daysAgo > 300 ? (index === 2 ? 0.085 : 0.022) : 0.007 }, story: 'improves after corrective action', disposition: 'sort' }) },
   { supplier: 'NORRHAVEN', part: 'KF-1548-A', count: 7, first: 395, last: 30, running: 22, made: () => ({ made: {} }) },
-  { supplier: 'NORRHAVEN', part: 'KF-2350-A', count: 6, first: 380, last: 45, running: 51, made: () => ({ made: {} }) },
+  // Quiet, but for one lot whose rotor stacks differ in strength.
+  { supplier: 'NORRHAVEN', part: 'KF-2350-A', count: 6, first: 380, last: 45, running: 51, made: index => index === 3 ? { made: { rotorScatter: 0.15 }, story: 'rotor stacks differ', disposition: 'return-to-supplier' } : { made: {} } },
 ]
 
 /** About sixty past lots, the oldest first; in the small size a handful with one rejection. */
@@ -72,7 +73,7 @@ export function pastLots(today: Date, size: 'small' | 'full'): DemoLot[] {
   if (size === 'full') return sorted
   const few = sorted.filter(lot => lot.part === 'KF-4412-C' && lot.supplier === 'AMBREL').slice(-4)
   const last = sorted.filter(lot => lot.supplier === 'TUVALO').at(-1)!
-  return [...few, last, ...sorted.filter(lot => lot.supplier === 'NORRHAVEN').slice(-1)].map(lot => ({ ...lot, quantity: 60 })).sort((a, b) => b.daysAgo - a.daysAgo)
+  return [...few, last, ...sorted.filter(lot => lot.supplier === 'NORRHAVEN').slice(-1)].map(lot => lot === last ? lot : { ...lot, quantity: 60 }).sort((a, b) => b.daysAgo - a.daysAgo)
 }
 
 /** Today's three: one drawn and waiting, one with files of all kinds and two bad ones, one at the gate with its label. */
