@@ -85,10 +85,11 @@ describe('the main path', () => {
     await page.locator('ul[aria-label="Drawn motors"] a').first().click()
     await page.waitForURL('**/motors/*')
     await page.getByText('Amplitude by order').first().waitFor()
+    const first = page.url()
     await page.keyboard.press('ArrowRight')
-    await page.waitForURL(/motors/)
-    await page.goBack()
-    await page.goto((await page.url()).replace(/\/motors\/.*/, ''))
+    await page.waitForURL(url => url.href !== first)
+    await page.getByText('Amplitude by order').first().waitFor()
+    await page.goto(first.replace(/\/motors\/.*/, ''))
 
     const pdf = await download(page, () => page.getByRole('link', { name: /^Certificate P-/ }).click())
     expect(pdf.subarray(0, 5).toString()).toBe('%PDF-')
@@ -115,6 +116,7 @@ describe('the main path', () => {
     await page.getByLabel('Serial numbers in the order of the delivery').fill(serials)
     await page.getByRole('button', { name: 'Receive and draw the sample' }).click()
     await page.waitForURL(/\/lots\/\d\d-\d{4}/)
+    await page.getByRole('heading', { name: /^TV-/ }).waitFor()
     const lot = (await page.locator('h1').textContent())!.trim()
     await uploadDemoFiles(page)
     await page.getByText(/^Measured \d+$/).waitFor({ timeout: 60_000 })
@@ -190,8 +192,9 @@ async function readMail(lot: string): Promise<void> {
   await page.goto('/mailbox')
   await expect.poll(async () => {
     await page.reload()
-    return await page.locator('body').textContent()
-  }, { timeout: 60_000, interval: 2000 }).toContain(lot)
+    return (await page.locator('main').textContent())!.includes(lot)
+  }, { timeout: 60_000, interval: 2000 }).toBe(true)
+  await page.getByText(/P-\d{4}-\d{6}\.pdf/).first().waitFor()
   await visitor.context.close()
 }
 
@@ -201,6 +204,16 @@ async function actAsSupplier(lot: string): Promise<void> {
   await signIn(page, 'quality@tuvalo.example', PASSWORD)
   await page.waitForURL('**/supplier')
   await page.getByText(lot).first().waitFor()
-  expect(await page.locator('body').textContent()).not.toContain('Ambrel')
+  expect(await page.locator('main').textContent()).not.toContain('Ambrel')
+  // What belongs to another supplier answers exactly as if it did not exist.
+  const [foreign, missing] = await Promise.all(['26-0001', '99-9999'].map(number => page.request.get(`/api/lots/${number}`)))
+  expect([foreign!.status(), missing!.status()]).toEqual([404, 404])
+  await page.getByRole('link', { name: new RegExp(`Please acknowledge.*${lot}`, 's') }).click()
+  await page.waitForURL('**/returns/*')
+  const results = await download(page, () => page.getByRole('link', { name: 'Results, CSV' }).click())
+  expect(results.toString('utf8')).toContain('098-')
+  await page.getByRole('button', { name: 'Acknowledge' }).click()
+  await expect.poll(async () => (await page.locator('main').textContent())!.toLowerCase()).toContain('acknowledged')
+  expectNoComplaints(visitor)
   await visitor.context.close()
 }
