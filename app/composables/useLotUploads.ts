@@ -94,11 +94,20 @@ export function useLotUploads(lotNumber: string, rig: Ref<string>, refresh: () =
   }
   onMounted(() => window.addEventListener('beforeunload', onLeave))
 
+  /** Where the files stand, in a few words; '' when there are none. */
+  const summary = computed(() => {
+    const judged = rows.value.filter(row => row.answer?.state === 'judged').length
+    const lookAt = rows.value.filter(row => row.state === 'failed' || (row.answer && row.answer.state !== 'judged')).length
+    const under = rows.value.length - judged - lookAt
+    return [under ? `${under} on the way` : '', judged ? `${judged} judged` : '', lookAt ? `${lookAt} to look at` : ''].filter(text => text !== '').join(', ')
+  })
   const busy = computed(() => rows.value.some(row => row.state !== 'done' && row.state !== 'failed'))
-  const clear = () => void (rows.value = rows.value.filter(row => row.state !== 'done' && row.state !== 'failed'))
+  /** Takes finished rows off the list; one that was not sent stays until it is sent or left out by hand. */
+  const clear = () => void (rows.value = rows.value.filter(row => row.state !== 'done'))
+  const leaveOut = (row: UploadRow) => void (rows.value = rows.value.filter(each => each.key !== row.key))
   onBeforeUnmount(() => {
     clearTimeout(timer)
     window.removeEventListener('beforeunload', onLeave)
   })
-  return { rows, add, retry, clear, busy }
+  return { rows, add, retry, clear, leaveOut, summary }
 }
