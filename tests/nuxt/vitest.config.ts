@@ -3,7 +3,8 @@ import { defineVitestProject } from '@nuxt/test-utils/config'
 export default defineVitestProject({
   test: {
     name: 'nuxt',
-    include: ['tests/nuxt/**/*.test.ts'],
+    include: ['**/*.test.ts'],
+    setupFiles: ['./setup.ts'],
     environment: 'nuxt',
     environmentOptions: { nuxt: { domEnvironment: 'happy-dom' } },
   },

@@ -1,5 +1,6 @@
 import { describeCharacteristic } from '#shared/compute/judging/characteristics'
 import { formatRow } from '#shared/compute/judging/quantities'
+import { partRemarks } from '#shared/compute/judging/notes'
 import { limitText } from '#shared/compute/judging/sheet-changes'
 import type { Limit } from '#shared/compute/terms/judgement'
 import type { PaperRecord, PaperSample } from '#shared/contracts/paper-record'
@@ -80,13 +81,14 @@ export function drawResults(sheet: Sheet, record: PaperRecord): void {
   end()
   sheet.y -= 3
   const rest = record.sheet.content.limits.length - shown.length
-  sheet.paragraph(`Values with their expanded uncertainty, k = 2.${rest > 0 ? ` ${rest} further limited characteristics are judged too; all figures stand in the attached record, and those that fail are named above.` : ''}`, { size: 7.6, colour: SOFT })
+  const notes = [...new Set(record.samples.flatMap(sample => partRemarks(sample.warnings).notes.map(note => note.sentence)))].map(note => ` ${note}`).join('')
+  sheet.paragraph(`Values with their expanded uncertainty, k = 2.${rest > 0 ? ` ${rest} further limited characteristics are judged too; all figures stand in the attached record, and those that fail are named above.` : ''}${notes}`, { size: 7.6, colour: SOFT })
 }
 
 function drawResult(sheet: Sheet, sample: PaperSample, shown: Limit[], columns: Column[]): void {
   const fails = sample.characteristics.filter(row => row.verdict === 'fail' || row.verdict === 'conditional-fail')
   const unjudged = sample.characteristics.filter(row => row.verdict === null)
-  const remarks = [...fails.map(row => `${describeCharacteristic(row.key).label}: ${row.reason}`), ...unjudged.map(row => `${describeCharacteristic(row.key).label}: ${row.reason}`), ...sample.warnings.map(warning => warning.sentence)]
+  const remarks = [...fails.map(row => `${describeCharacteristic(row.key).label}: ${row.reason}`), ...unjudged.map(row => `${describeCharacteristic(row.key).label}: ${row.reason}`), ...partRemarks(sample.warnings).doubts.map(warning => warning.sentence)]
   const lines = remarks.flatMap(remark => sheet.wrap(remark, PAGE.right - PAGE.left - 30, { size: 7.6 }))
   sheet.need(15 + 10 * Math.min(lines.length, 6))
   sheet.y -= 12

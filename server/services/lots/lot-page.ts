@@ -1,5 +1,6 @@
 import { and, desc, eq, inArray } from 'drizzle-orm'
 import { explainFailures } from '#shared/compute/judging/explain'
+import { partRemarks } from '#shared/compute/judging/notes'
 import { designOrder } from '#shared/compute/motor/design-order'
 import { evaluateSeries } from '#shared/compute/torque/evaluate'
 import type { LotPage, SampleTile } from '#shared/contracts/lots'
@@ -57,13 +58,16 @@ function tilesOf(db: Pick<Reader, 'select'>, lotId: number, evidence: Evidence):
     ring: measurement ? Array.from(evaluateSeries(measurement.result.cogging, RING_POINTS), value => Number(value.toPrecision(4))) : null,
     nonconformingClasses: measurement?.judgement.nonconformingClasses ?? [],
     attempts: attempts.get(sample.id) ?? 0,
-    warnings: measurement?.result.warnings.length ?? 0,
+    warnings: partRemarks(measurement?.result.warnings ?? []).doubts.length,
   }))
 }
 
+/** Files that someone has to look at. One that was refused and judged later, as once its unit was named, waits no more. */
 function waitingFiles(db: Pick<Reader, 'select'>, lotId: number): LotPage['files'] {
+  const judged = new Set(db.select({ sha256: uploads.sha256 }).from(uploads).where(and(eq(uploads.lotId, lotId), eq(uploads.state, 'judged'))).all().map(row => row.sha256))
   return db.select({ upload: uploads, rig: rigs.code }).from(uploads).innerJoin(rigs, eq(rigs.id, uploads.rigId))
     .where(and(eq(uploads.lotId, lotId), inArray(uploads.state, ['tray', 'refused', 'incomplete']))).orderBy(desc(uploads.id)).limit(500).all()
+    .filter(({ upload }) => upload.state !== 'refused' || !judged.has(upload.sha256))
     .map(({ upload, rig }) => ({ ...answerOf(db, upload), uploadedAt: upload.uploadedAt, rig }))
 }
 

@@ -87,24 +87,34 @@ function explain(motor: ExplainedMotor, usual: (order: number) => number): strin
   const friction = failing.some(isFriction) ? ' Friction is beyond its limit too.' : ''
   if (findings.length === 0) {
     const what = failing.length > 0 && failing.every(isReference) ? 'the map differs from the reference, but no order stands out' : 'no order stands out'
-    return `${motor.serial}: ${what}, so the map names no likely origin.${friction}`
+    return `${what}, so the map names no likely origin.${friction}`
   }
-  return `${motor.serial}: ${findings.map(wordsFor).join('; ')}.${friction}`
+  return `${findings.map(wordsFor).join('; ')}.${friction}`
 }
 
 /**
- * Plain sentences about where the ripple of the nonconforming motors likely comes from, one a motor.
+ * Plain sentences about where the ripple of the nonconforming motors likely comes from, one for all motors of the same finding.
  *
  * An order stands out when its amplitude exceeds the median of the conforming motors of the same sample (0 with fewer than
  * two of them) by more than its own uncertainty and by at least half as much as the most excessive order. At most four
  * orders and two origins are named. What fits two origins is called "either"; nothing is claimed beyond the side.
  *
  * @param motors motors of the sample; conforming ones serve as comparison, amplitudes in N·m
- * @returns one sentence for each nonconforming motor, in the given order
+ * @returns one sentence for each finding, with the serials that share it, in the given order
  * Source: attribution of orders as in OrderOrigin; the thresholds are common practice, no source.
  */
 export function explainFailures(motors: readonly ExplainedMotor[]): string[] {
   const failing = motors.filter(motor => isNonconforming(motor.verdict.verdict))
   const usual = usualAmplitudes(motors.filter(motor => motor.verdict.verdict === 'pass' || motor.verdict.verdict === 'conditional-pass'))
-  return failing.map(motor => explain(motor, usual))
+  const bySentence = new Map<string, string[]>()
+  for (const motor of failing) {
+    const sentence = explain(motor, usual)
+    bySentence.set(sentence, [...bySentence.get(sentence) ?? [], motor.serial])
+  }
+  return [...bySentence].map(([sentence, serials]) => `${joinSerials(serials)}: ${sentence}`)
+}
+
+/** "71-4452, 71-4515 and 71-4520". */
+function joinSerials(serials: readonly string[]): string {
+  return serials.length === 1 ? serials[0]! : `${serials.slice(0, -1).join(', ')} and ${serials.at(-1)}`
 }

@@ -161,7 +161,7 @@ function after(memory: Memory, event: SwitchingEvent): Memory {
  * Source: MIL-STD-105E, 4.7.1 to 4.8; ISO 2859-1:1999, 9.3 and 9.4 (score from memory).
  */
 export function nextSeverity(history: readonly SwitchingEvent[]): SwitchingState {
-  const memory = history.reduce(after, start('normal', 'Normal: inspection begins so.'))
+  const memory = history.reduce(after, start('normal', 'Normal inspection, as every supplier’s part begins.'))
   const { severity, score, reason, state, reducedOffered } = memory
   return { severity, score, reason, state, reducedOffered }
 }

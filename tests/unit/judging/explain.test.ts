@@ -54,3 +54,14 @@ describe('explainFailures', () => {
     expect(explainFailures([motor('A', 'pass', []), motor('B', 'conditional-pass', []), motor('C', null, [])])).toEqual([])
   })
 })
+
+describe('explainFailures, motors of the same finding', () => {
+  it('says the finding once, with all serials that share it', () => {
+    const motors = [
+      motor('71-0001', 'pass', [order(12, 1, 'rotorSide')]), motor('71-0002', 'pass', [order(12, 1, 'rotorSide')]), motor('71-0003', 'fail', [order(12, 90, 'rotorSide')]), motor('71-0004', 'fail', [order(12, 80, 'rotorSide')]),
+    ]
+    const sentences = explainFailures(motors)
+    expect(sentences).toHaveLength(1)
+    expect(sentences[0]).toMatch(/^71-0003 and 71-0004: order 12 stands out, the rotor side/)
+  })
+})

@@ -45,7 +45,7 @@ describe('nextSeverity on constructed scenarios of the standards', () => {
 
 describe('nextSeverity', () => {
   it('begins with normal inspection', () => {
-    expect(nextSeverity([])).toEqual({ severity: 'normal', score: 0, reason: 'Normal: inspection begins so.', state: 'active', reducedOffered: false })
+    expect(nextSeverity([])).toEqual({ severity: 'normal', score: 0, reason: 'Normal inspection, as every supplier’s part begins.', state: 'active', reducedOffered: false })
   })
 
   it('tightens at two rejected of five, not at two of six', () => {
