@@ -226,8 +226,8 @@ describe.each(['2026-06-01', '2026-11-30', '2027-02-28'])('scenario of %s', (day
   })
 
   it('has two received lots and one at the gate with a label, contacts for each supplier and a person of each role', () => {
-    expect(today.map(lot => lot.received)).toEqual([true, true, false])
-    expect(labelOf(today[2]!, 'PO-1')).toBe(`[)>\u001E06\u001DPKF-4412-C\u001DQ400\u001D1T${today[2]!.supplierLot}\u001DVTUVALO\u001DKPO-1\u001E\u0004`)
+    expect(today.map(lot => lot.received)).toEqual([true, true, true, false])
+    expect(labelOf(today[3]!, 'PO-1')).toBe(`[)>\u001E06\u001DPKF-4412-C\u001DQ400\u001D1T${today[3]!.supplierLot}\u001DVTUVALO\u001DKPO-1\u001E\u0004`)
     for (const { code } of suppliers) expect(people.filter(person => person.supplier === code)).toHaveLength(2)
     expect(new Set(people.map(person => person.role)).size).toBe(6)
   })

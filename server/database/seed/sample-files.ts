@@ -28,6 +28,7 @@ export function waitingFiles(lot: WaitingLot, drawn: readonly { position: number
       const good = sampleFile(lot, sample.position, { dialect: 'plain', serial })
       return [{ ...spoil(good, fault), name: good.name.replace('.csv', '_first-try.csv') }, good]
     }
+    if (lot.split) return (['forward', 'reverse'] as const).map(directions => sampleFile(lot, sample.position, { dialect, serial, directions }))
     return [sampleFile(lot, sample.position, { dialect, serial })]
   })
 }

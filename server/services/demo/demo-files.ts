@@ -38,5 +38,5 @@ function scenarioLot(context: Context, supplierLot: string, part: string, suppli
     throw new DomainError('not-found', `There are no demo files for part ${part}.`)
   }
   const known = pastLots(day, 'full').find(lot => lot.supplierLot === supplierLot)
-  return { ...(known ?? { supplier, part, supplierLot, quantity, daysAgo: 0, made: {} }), received: true, serialsListed: true, dialects: ['plain'], faults: [], title: '' }
+  return { ...(known ?? { supplier, part, supplierLot, quantity, daysAgo: 0, made: {} }), received: true, serialsListed: true, split: false, dialects: ['plain'], faults: [], title: '' }
 }

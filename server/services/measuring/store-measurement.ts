@@ -12,7 +12,7 @@ import type { calibrations, rigs } from '../../database/schema/rigs'
 import { now } from '../context'
 import type { Context } from '../context'
 import { DomainError } from '../domain-error'
-import { countedMeasurements } from '../lots/counted-measurements'
+import { countedJudgements } from '../lots/counted-measurements'
 import { appendToLogbook } from '../logbook/append'
 import { answerOf } from './upload-answer'
 
@@ -79,8 +79,7 @@ function insertMeasurement(context: Context, tx: Transaction, input: Measurement
  * judged, or the rejection number reached), and back when an attempt was voided.
  */
 export function advanceLot(tx: Transaction, lot: typeof lots.$inferSelect): void {
-  const counted = countedMeasurements(tx, lot.id)
-  const verdict = judgeLot({ plan: lot.plan, motors: counted.map(row => row.measurement?.judgement ?? null) })
+  const verdict = judgeLot({ plan: lot.plan, motors: countedJudgements(tx, lot.id) })
   const decidable = verdict.outcome !== 'open'
   let state = lot.state
   if (state === 'drawn') state = lotLifecycle.transition(state, 'measure')

@@ -28,6 +28,8 @@ export interface WaitingLot extends DemoLot {
   received: boolean
   serialsListed: boolean
   dialects: Dialect[]
+  /** Forward and reverse in a file each. */
+  split: boolean
   /** Faults put into the first files. */
   faults: FileFault[]
   title: string
@@ -76,15 +78,16 @@ export function pastLots(today: Date, size: 'small' | 'full'): DemoLot[] {
   return [...few, last, ...sorted.filter(lot => lot.supplier === 'NORRHAVEN').slice(-1)].map(lot => lot === last ? lot : { ...lot, quantity: 60 }).sort((a, b) => b.daysAgo - a.daysAgo)
 }
 
-/** Today's three: one drawn and waiting, one with files of all kinds and two bad ones, one at the gate with its label. */
+/** Today's four: one drawn and waiting, one with files of all kinds and two bad ones, one with a file for each direction, one at the gate with its label. */
 export function lotsToday(today: Date): WaitingLot[] {
-  const common = { daysAgo: 0, serialsListed: true, dialects: ['plain'] as Dialect[], faults: [] as FileFault[] }
+  const common = { daysAgo: 0, serialsListed: true, split: false, dialects: ['plain'] as Dialect[], faults: [] as FileFault[] }
   return [
     { ...common, supplier: 'AMBREL', part: 'KF-4412-C', supplierLot: lotNumber('AMBREL', today, 0, 96), quantity: 160, made: { designPeakToPeakNm: 3.7e-3, rotorScatter: 0.006, statorScatter: 0.006 }, received: true, title: 'Wrist outrunners of Ambrel Coilworks, received this morning' },
     {
-      ...common, supplier: 'AMBREL', part: 'KF-3098-B', supplierLot: lotNumber('AMBREL', today, 0, 97), quantity: 90, made: { statorScatter: 0.006, rotorScatter: 0.007 }, received: true, title: 'Shoulder servos, with files of all kinds',
+      ...common, supplier: 'AMBREL', part: 'KF-3098-B', supplierLot: lotNumber('AMBREL', today, 0, 97), quantity: 240, made: { statorScatter: 0.006, rotorScatter: 0.007 }, received: true, title: 'Shoulder servos, with files of all kinds',
       dialects: ['plain', 'semicolon', 'tab-radian', 'space-run', 'counts-ounce', 'gram-force', 'unnamed', 'plain'], faults: ['text-in-a-number', 'half-a-turn'],
     },
+    { ...common, supplier: 'NORRHAVEN', part: 'KF-1548-A', supplierLot: lotNumber('NORRHAVEN', today, 0, 99), quantity: 90, made: {}, received: true, split: true, title: 'Latch steppers, a file for each direction' },
     { ...common, supplier: 'TUVALO', part: 'KF-4412-C', supplierLot: lotNumber('TUVALO', today, 0, 98), quantity: 400, made: { rotorScatter: 0.04 }, received: false, title: 'Wrist outrunners of Tuvalo Precision Drives, at the gate' },
   ]
 }
