@@ -1,39 +1,14 @@
 /** Bounds of what one drop may hold; a zip beyond them is refused rather than unpacked. */
-const MOST_FILES = 500
+export const MOST_FILES = 500
 const LARGEST_MEMBER = 200 * 1024 * 1024
 
 /** Names that a computer adds to folders and zips by itself, and notes beside the maps. */
-const NOT_A_MAP = /(^|\/)(\.|__MACOSX\/|Thumbs\.db$|desktop\.ini$)|\.(md|pdf|png|jpe?g)$/i
+export const NOT_A_MAP = /(^|\/)(\.|__MACOSX\/|Thumbs\.db$|desktop\.ini$)|\.(md|pdf|png|jpe?g)$/i
 
 export interface GatheredFiles {
   files: File[]
   /** One sentence for each archive or folder that could not be opened. */
   problems: string[]
-}
-
-/** The files of a drop, those in dropped folders too. To be called before the event ends: the browser forgets the items after it. */
-export async function droppedFiles(transfer: DataTransfer): Promise<GatheredFiles> {
-  const entries = [...transfer.items].flatMap((item) => {
-    const entry = item.kind === 'file' ? item.webkitGetAsEntry() : null
-    return entry ? [entry] : []
-  })
-  if (entries.length === 0) return openArchives([...transfer.files])
-  const found: File[] = []
-  for (const entry of entries) await walk(entry, found)
-  return openArchives(found)
-}
-
-async function walk(entry: FileSystemEntry, found: File[]): Promise<void> {
-  if (found.length > MOST_FILES || NOT_A_MAP.test(entry.name)) return
-  if (entry.isFile) found.push(await new Promise<File>((resolve, reject) => (entry as FileSystemFileEntry).file(resolve, reject)))
-  if (!entry.isDirectory) return
-  const reader = (entry as FileSystemDirectoryEntry).createReader()
-  // A reader gives its entries a hundred at a time, and an empty list at the end.
-  for (;;) {
-    const some = await new Promise<FileSystemEntry[]>((resolve, reject) => reader.readEntries(resolve, reject))
-    if (some.length === 0) return
-    for (const each of some) await walk(each, found)
-  }
 }
 
 /** Replaces each zip by its members; a zip is transport, its members are what is measured. */
