@@ -86,6 +86,9 @@ export default defineNuxtConfig({
   },
   typescript: {
     strict: true,
-    nodeTsConfig: { include: ['../*.config.ts', '../tests/e2e/**/*', '../tests/nuxt/vitest.config.ts'] },
+    nodeTsConfig: {
+      include: ['../*.config.ts', '../tests/e2e/**/*', '../tests/nuxt/vitest.config.ts'],
+      compilerOptions: { paths: { '#shared/*': ['../shared/*'] } },
+    },
   },
 })

@@ -106,7 +106,7 @@ describe('a day of each role', () => {
     const raw = await page.getByRole('link', { name: /\.csv/ }).first().getAttribute('href')
     expect((await page.request.get(raw!)).status()).toBe(200)
     await page.goto(`/logbook?subjectKind=lot&subjectId=${known.lot}`)
-    await page.getByText('lot rejected').first().waitFor()
+    await page.locator('tbody').getByText('lot rejected').first().waitFor()
     await page.getByRole('button', { name: 'Check the whole chain' }).click()
     await page.getByText(/entries follow from one another/).waitFor()
     expect(await page.getByRole('button', { name: 'Withdraw' }).count()).toBe(0)
