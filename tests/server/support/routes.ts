@@ -1,4 +1,4 @@
-import { readdirSync } from 'node:fs'
+import { existsSync, readdirSync } from 'node:fs'
 import { join, relative } from 'node:path'
 import { fileURLToPath } from 'node:url'
 
@@ -11,6 +11,7 @@ export function routeFiles(): { key: string; file: string }[] {
 }
 
 function filesBelow(folder: string): string[] {
+  if (!existsSync(folder)) return []
   return readdirSync(folder, { withFileTypes: true, recursive: true }).filter(entry => entry.isFile()).map(entry => join(entry.parentPath, entry.name))
 }
 
