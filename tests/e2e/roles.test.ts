@@ -60,6 +60,27 @@ describe('a day of each role', () => {
     await approver.context.close()
   })
 
+  it('an engineer decides what happens to a rejected lot; a concession asks for the password', async () => {
+    const visitor = await visit()
+    const { page } = visitor
+    await signIn(page, 'jonas@kestrelfold.example', DEMO_PASSWORD)
+    const known = await findKnown(page.request)
+    await page.goto('/returns')
+    await page.getByRole('link', { name: known.nonconformance }).first().click()
+    await page.waitForURL(`**/returns/${known.nonconformance}`)
+    await page.getByLabel(/Use under concession/).check()
+    await page.getByLabel('Reason, told to the supplier').fill('Used in the training arms only')
+    await page.getByLabel('Your password signs the concession').fill('not the password')
+    await page.getByRole('button', { name: 'Sign the concession' }).click()
+    await page.getByText('This is not your password.').waitFor()
+    await page.getByLabel(/Return to the supplier/).check()
+    await page.getByRole('button', { name: 'Decide' }).click()
+    await expect.poll(async () => (await (await page.request.get(`/api/lots/${known.lot}`)).json() as { state: string }).state).toBe('dispositioned')
+    visitor.complaints = visitor.complaints.filter(line => !line.includes('403'))
+    expectNoComplaints(visitor)
+    await visitor.context.close()
+  })
+
   it('an inspector binds serials to drawn positions of a delivery without a list', async () => {
     const visitor = await visit()
     const { page } = visitor
