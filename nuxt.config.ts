@@ -19,6 +19,8 @@ export default defineNuxtConfig({
   css: ['~/assets/css/fonts.css'],
   tailwindcss: { cssPath: ['~/assets/css/tailwind.css', { injectPosition: 'first' }], viewer: false },
   eslint: { config: { stylistic: false } },
+  // Who is signed in comes from our own session route; the module's is not asked.
+  auth: { loadStrategy: 'none' },
 
   // Every setting has a NUXT_… variable; a demo needs none of them.
   runtimeConfig: {

@@ -40,6 +40,20 @@ describe('every route', () => {
     })
   }
 
+  it('answers unknown paths and wrong methods in the one shape, and gives visitors no session', async () => {
+    const { context, page } = await visit()
+    for (const [method, path] of [['GET', '/api/unknown'], ['POST', '/api/dock'], ['DELETE', '/api/lots/26-0001'], ['GET', '/api/lots/26-0001/../../unknown']] as const) {
+      const response = await page.request.fetch(path, { method })
+      expect([path, response.status()]).toEqual([path, 404])
+      expect(errorResponseSchema.safeParse(await response.json()).success).toBe(true)
+    }
+    await page.request.get('/api/session')
+    expect((await context.cookies()).map(cookie => cookie.name)).not.toContain('evenlot')
+    await page.request.post('/api/session', { data: { email: PEOPLE.auditor, password: DEMO_PASSWORD } })
+    expect((await context.cookies()).find(cookie => cookie.name === 'evenlot')).toMatchObject({ httpOnly: true, secure: true, sameSite: 'Lax' })
+    await context.close()
+  })
+
   it('refuses a change that a page of another site sends', async () => {
     const { context, page } = await visit()
     const response = await page.request.post('/api/session', { data: { email: PEOPLE.engineer, password: DEMO_PASSWORD }, headers: { origin: 'https://elsewhere.example' } })
