@@ -1,5 +1,4 @@
 import { combGeometry } from '#shared/compute/figures/comb'
-import { circlePath } from '#shared/compute/figures/path'
 import { ringGeometry } from '#shared/compute/figures/ring'
 import { formatQuantity, joinQuantity } from '#shared/compute/judging/quantities'
 import { evaluateSeries } from '#shared/compute/torque/evaluate'
@@ -31,16 +30,12 @@ export function worstMotor(record: PaperRecord): PaperSample | null {
 export function drawRing(sheet: Sheet, sample: PaperSample, limit: number | null, x: number, top: number, size: number): void {
   const large = size > 100
   const geometry = ringGeometry({ values: evaluateSeries(sample.cogging!, large ? 4096 : 1024), limitPeakToPeakNm: limit, size })
-  if (geometry.band) {
-    sheet.path(circlePath(geometry.centre, geometry.centre, geometry.radius * 1.16), x, top, { fill: BAND })
-    sheet.path(circlePath(geometry.centre, geometry.centre, geometry.radius * 0.84), x, top, { fill: failing(sample) && !large ? FAIL_WASH : WHITE })
-  }
+  if (geometry.band) sheet.path(geometry.band, x, top, { fill: BAND })
   sheet.path(geometry.zeroCircle, x, top, { stroke: LINE, width: 0.4 })
   sheet.path(geometry.trace, x, top, { stroke: large ? INK : SOFT, width: large ? 0.7 : 0.35 })
   sheet.path(geometry.beyond, x, top, { stroke: FAIL, width: large ? 2 : 1 })
+  if (geometry.cutEdge) sheet.path(geometry.cutEdge, x, top, { stroke: FAIL, width: 0.4, dash: [2, 1.5] })
 }
-
-const WHITE = { type: 'RGB', red: 1, green: 1, blue: 1 } as typeof INK
 
 /** Large ring with its figure in the middle, and the comb beside it. */
 export function drawWorst(sheet: Sheet, record: PaperRecord, sample: PaperSample): void {
