@@ -12,7 +12,7 @@ if (!Number.isInteger(wanted) || wanted < 1) {
   console.error('--sample takes a whole number from 1.')
   process.exit(1)
 }
-const seed = typeof values.seed === 'string' ? values.seed : [...crypto.getRandomValues(new Uint8Array(8))].map(byte => byte.toString(16).padStart(2, '0')).join('')
+const seed = values.seed ?? [...crypto.getRandomValues(new Uint8Array(8))].map(byte => byte.toString(16).padStart(2, '0')).join('')
 const chosen = ids.length === 0 ? [] : drawSample({ lotSize: ids.length, n: Math.min(wanted, ids.length), seed }).map(position => ids[position - 1]!)
 let failed = 0
 for (const id of chosen) {

@@ -13,8 +13,8 @@ import { createFileStore } from '../files/store'
  * Ends the process with a sentence when there is none.
  */
 export function openData(options: Record<string, { type: 'string' }> = {}) {
-  const { values } = parseArgs({ options: { data: { type: 'string' }, ...options } })
-  const folder = String(values.data ?? process.env.NUXT_DATA_FOLDER ?? '.data/demo')
+  const values: Record<string, string | undefined> = parseArgs({ options: { data: { type: 'string' }, ...options } }).values
+  const folder = values.data ?? process.env.NUXT_DATA_FOLDER ?? '.data/demo'
   const path = join(folder, 'evenlot.sqlite')
   if (!existsSync(path)) {
     console.error(`There is no database in ${folder}. Name the data folder with --data FOLDER.`)
