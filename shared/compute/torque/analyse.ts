@@ -4,6 +4,7 @@ import type { AnalysisOutcome, AnalysisSettings, ColumnRecipe, Fault, Warning } 
 import { characteristicsOf } from './characteristics'
 import { ENGINE_VERSION } from './engine-version'
 import type { MapEstimate } from './estimate'
+import { checkConstants, holdWarnings, rigOfConstants } from './hold'
 import { tabulateOrders, type OrderTable } from './orders'
 import { readFiles, type MeasurementFile } from './readings'
 import { angleSensorEccentricity } from './sidebands'
@@ -18,6 +19,7 @@ function checkOrder(name: string, order: number): void {
 function checkSettings(files: MeasurementFile[], settings: AnalysisSettings): void {
   if (files.length === 0) throw new RangeError('analyse: files must hold one file or more')
   designOrder(settings.design)
+  checkConstants(settings.constants)
   if (settings.highestOrder !== null) checkOrder('settings.highestOrder', settings.highestOrder)
   for (const order of settings.ordersNamed) checkOrder('settings.ordersNamed', order)
   const { ratedTorqueNm, rig } = settings
@@ -34,11 +36,11 @@ type MethodOutcome = { ok: true; estimate: MapEstimate; recipe: ColumnRecipe } |
 /** The reader and estimator of each method; all give the same kind of estimate. */
 function estimateMap(files: MeasurementFile[], settings: AnalysisSettings): MethodOutcome {
   switch (settings.method) {
-    case 'torque-sensor': {
+    case 'torque-sensor':
+    case 'hold': {
       const read = readFiles(files, settings)
       return read.ok ? { ...estimateFromTorqueSensor(read.readings, settings), recipe: read.recipe } : read
     }
-    case 'hold':
     case 'spin':
       return fail('method-not-supported', null, `Files of the method "${settings.method}" cannot be judged yet.`, 'Measure the motor with a torque sensor.')
   }
@@ -63,12 +65,13 @@ function compensationWarnings(estimate: MapEstimate, settings: AnalysisSettings)
  * torque, its odd part friction and hysteresis.
  *
  * @param files - one file or more, delimited text, all of one recipe
- * @param settings - method, motor, rated torque (N·m), orders, compensation, column recipe (null: guessed), rig
+ * @param given - method, motor, rated torque (N·m), orders, compensation, column recipe (null: guessed), rig, constants of the methods without a torque sensor
  * @returns the figures and warnings; or the fault with its line, and the recipe guessed so far
  * @throws RangeError when the settings are outside their domains
  */
-export function analyse(files: MeasurementFile[], settings: AnalysisSettings): AnalysisOutcome {
-  checkSettings(files, settings)
+export function analyse(files: MeasurementFile[], given: AnalysisSettings): AnalysisOutcome {
+  checkSettings(files, given)
+  const settings = given.method === 'torque-sensor' ? given : { ...given, rig: rigOfConstants(given) }
   const estimated = estimateMap(files, settings)
   if (!estimated.ok) return estimated
   const { estimate, recipe } = estimated
@@ -87,7 +90,7 @@ export function analyse(files: MeasurementFile[], settings: AnalysisSettings): A
       friction: estimate.friction,
       orders: table.listed,
       characteristics: characteristicsOf(estimate, table, settings),
-      warnings: [...estimate.warnings, ...rigWarnings(table), ...compensationWarnings(estimate, settings)],
+      warnings: [...estimate.warnings, ...holdWarnings(recipe, settings), ...rigWarnings(table), ...compensationWarnings(estimate, settings)],
       recipe,
     },
   }
