@@ -72,20 +72,6 @@ export interface CompensationSettings {
   stepNm: number
 }
 
-/** Constants by which effort becomes torque where no torque sensor was used. */
-export interface MethodConstants {
-  /** Torque of one ampere, N·m/A. */
-  torqueConstantNmPerA?: number | null
-  /** Resistance through which a voltage drives the current, Ω. */
-  phaseResistanceOhm?: number | null
-  /** Bus voltage where the file has no column of it, V. */
-  busVoltage?: number | null
-  /** Voltage that the inverter's dead time takes from the voltage commanded, V. */
-  deadTimeVoltage?: number | null
-  /** Standard uncertainty of the product of the constants, relative (1 = 100 %). */
-  relativeUncertainty?: number | null
-}
-
 /** Everything outside the file that its figures depend on. */
 export interface AnalysisSettings {
   method: Method
@@ -100,8 +86,6 @@ export interface AnalysisSettings {
   compensation: CompensationSettings | null
   recipe: ColumnRecipe | null
   rig: RigProperties | null
-  /** Only for the methods without a torque sensor. */
-  constants?: MethodConstants
 }
 
 export type CharacteristicUnit = 'N·m' | '%' | '1' | 'rad'

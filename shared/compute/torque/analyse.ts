@@ -4,7 +4,6 @@ import type { AnalysisOutcome, AnalysisSettings, ColumnRecipe, Fault, Warning } 
 import { characteristicsOf } from './characteristics'
 import { ENGINE_VERSION } from './engine-version'
 import type { MapEstimate } from './estimate'
-import { checkConstants, holdWarnings, rigOfConstants } from './hold'
 import { tabulateOrders, type OrderTable } from './orders'
 import { readFiles, type MeasurementFile } from './readings'
 import { angleSensorEccentricity } from './sidebands'
@@ -19,7 +18,6 @@ function checkOrder(name: string, order: number): void {
 function checkSettings(files: MeasurementFile[], settings: AnalysisSettings): void {
   if (files.length === 0) throw new RangeError('analyse: files must hold one file or more')
   designOrder(settings.design)
-  checkConstants(settings.constants)
   if (settings.highestOrder !== null) checkOrder('settings.highestOrder', settings.highestOrder)
   for (const order of settings.ordersNamed) checkOrder('settings.ordersNamed', order)
   const { ratedTorqueNm, rig } = settings
@@ -36,11 +34,11 @@ type MethodOutcome = { ok: true; estimate: MapEstimate; recipe: ColumnRecipe } |
 /** The reader and estimator of each method; all give the same kind of estimate. */
 function estimateMap(files: MeasurementFile[], settings: AnalysisSettings): MethodOutcome {
   switch (settings.method) {
-    case 'torque-sensor':
-    case 'hold': {
+    case 'torque-sensor': {
       const read = readFiles(files, settings)
       return read.ok ? { ...estimateFromTorqueSensor(read.readings, settings), recipe: read.recipe } : read
     }
+    case 'hold':
     case 'spin':
       return fail('method-not-supported', null, `Files of the method "${settings.method}" cannot be judged yet.`, 'Measure the motor with a torque sensor.')
   }
@@ -65,13 +63,12 @@ function compensationWarnings(estimate: MapEstimate, settings: AnalysisSettings)
  * torque, its odd part friction and hysteresis.
  *
  * @param files - one file or more, delimited text, all of one recipe
- * @param given - method, motor, rated torque (N·m), orders, compensation, column recipe (null: guessed), rig, constants of the methods without a torque sensor
+ * @param settings - method, motor, rated torque (N·m), orders, compensation, column recipe (null: guessed), rig
  * @returns the figures and warnings; or the fault with its line, and the recipe guessed so far
  * @throws RangeError when the settings are outside their domains
  */
-export function analyse(files: MeasurementFile[], given: AnalysisSettings): AnalysisOutcome {
-  checkSettings(files, given)
-  const settings = given.method === 'torque-sensor' ? given : { ...given, rig: rigOfConstants(given) }
+export function analyse(files: MeasurementFile[], settings: AnalysisSettings): AnalysisOutcome {
+  checkSettings(files, settings)
   const estimated = estimateMap(files, settings)
   if (!estimated.ok) return estimated
   const { estimate, recipe } = estimated
@@ -90,7 +87,7 @@ export function analyse(files: MeasurementFile[], given: AnalysisSettings): Anal
       friction: estimate.friction,
       orders: table.listed,
       characteristics: characteristicsOf(estimate, table, settings),
-      warnings: [...estimate.warnings, ...holdWarnings(recipe, settings), ...rigWarnings(table), ...compensationWarnings(estimate, settings)],
+      warnings: [...estimate.warnings, ...rigWarnings(table), ...compensationWarnings(estimate, settings)],
       recipe,
     },
   }

@@ -1,7 +1,6 @@
 import { fail, inFile } from '../intake/fault'
 import { readTable, type MeasurementTable } from '../intake/read-table'
 import type { AnalysisSettings, ColumnRecipe, Fault } from '../terms/measurement'
-import { torqueOfHold } from './hold'
 
 /** A file to be analysed. */
 export interface MeasurementFile {
@@ -112,11 +111,6 @@ export function readFiles(files: MeasurementFile[], settings: AnalysisSettings):
     const read = readTable(file.bytes, recipe, settings.method)
     if (!read.ok) return files.length > 1 ? { ...read, fault: inFile(read.fault, file.name) } : read
     recipe = read.recipe
-    if (settings.method === 'hold') {
-      const torque = torqueOfHold(read.table, settings.constants)
-      if (!torque.ok) return { ...torque, recipe }
-      read.table.columns.torque = torque.value
-    }
     tables.push(read.table)
   }
   const readings = joinTables(tables, files.map((file) => file.name))

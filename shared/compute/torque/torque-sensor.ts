@@ -198,7 +198,7 @@ function frictionWarning(estimate: MapEstimate): Warning[] {
 }
 
 /**
- * Estimates a map from torque-sensor readings, or from hold-position readings turned into torque (without the sensor's faults, spikes and drift): directions, coverage, sensor faults, least-squares fit with spikes and drift removed, even and odd part.
+ * Estimates a map from torque-sensor readings: directions, coverage, sensor faults, least-squares fit with spikes and drift removed, even and odd part.
  *
  * @param readings - checked readings
  * @param settings - motor, orders and rig
@@ -214,18 +214,16 @@ export function estimateFromTorqueSensor(readings: Readings, settings: AnalysisS
     for (let row = 0; row < labels.length; row++) if (labels[row] !== kept) labels[row] = 0
   }
   const runs = torqueRuns(readings, labels)
-  // Effort at rest comes in coarse counts and one point at a time: equal values are no stuck sensor, one count is no spike, and there is no clock.
-  const sensed = settings.method === 'torque-sensor'
-  const fault = sensed ? findBadSensor(readings, runs, designOrder(settings.design)) : null
+  const fault = findBadSensor(readings, runs, designOrder(settings.design))
   if (fault) return { ok: false, fault }
-  const first = sensed ? fitWithoutSpikes(readings, readings.torqueNm, labels, extent, runs.stepNm) : { fitted: fitAll(readings, readings.torqueNm, labels, extent), spikes: [] }
+  const first = fitWithoutSpikes(readings, readings.torqueNm, labels, extent, runs.stepNm)
   if ('fault' in first) return { ok: false, fault: first.fault }
-  const { fitted, drift } = sensed ? fitWithoutDrift(readings, labels, extent, first.fitted) : { fitted: first.fitted, drift: null }
-  const estimate = estimateOf(readings, labels, extent, fitted, drift, settings, sensed ? runs.meanLength : 1)
+  const { fitted, drift } = fitWithoutDrift(readings, labels, extent, first.fitted)
+  const estimate = estimateOf(readings, labels, extent, fitted, drift, settings, runs.meanLength)
   if (!Number.isFinite(rmsOf(estimate.cogging) + estimate.coefficientDeviationNm)) {
     return fail('not-computable', null, 'No map could be computed from the readings.', 'Check the columns and their units, and measure again.')
   }
-  estimate.warnings = [...warnings, ...extent.warnings, ...directionWarning(extent), ...spikeWarning(first.spikes), ...driftWarning(drift), ...(sensed ? repeatedValues(runs) : []),
+  estimate.warnings = [...warnings, ...extent.warnings, ...directionWarning(extent), ...spikeWarning(first.spikes), ...driftWarning(drift), ...repeatedValues(runs),
     ...bandwidthWarning(readings, extent, settings), ...frictionWarning(estimate)]
   return { ok: true, estimate }
 }

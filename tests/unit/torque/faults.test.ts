@@ -205,7 +205,7 @@ describe('analyse checks its settings', () => {
   })
 
   it('gives a fault, not figures, for a method that it does not know yet', () => {
-    const outcome = analyse([{ name: 'a.csv', bytes: bytesOf('time_s,angle_deg\n0,1\n1,2\n') }], settingsWith({ method: 'spin' }))
+    const outcome = analyse([{ name: 'a.csv', bytes: bytesOf('angle_deg,current_A\n0,1\n1,2\n') }], settingsWith({ method: 'hold' }))
     expect(outcome).toMatchObject({ ok: false, fault: { code: 'method-not-supported' } })
   })
 })
