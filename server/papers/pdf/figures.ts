@@ -1,12 +1,12 @@
-import { combGeometry } from '#shared/compute/figures/comb'
+import { combGeometry, ORIGIN_LETTERS, ORIGIN_WORDS } from '#shared/compute/figures/comb'
 import { ringGeometry } from '#shared/compute/figures/ring'
-import { formatQuantity, joinQuantity } from '#shared/compute/judging/quantities'
+import { formatRow, joinQuantity } from '#shared/compute/judging/quantities'
 import { evaluateSeries } from '#shared/compute/torque/evaluate'
 import type { Origin } from '#shared/compute/terms/motor'
 import type { PaperRecord, PaperSample } from '#shared/contracts/paper-record'
 import { BAND, CAUTION, COPPER, FAIL, FAIL_WASH, INK, LINE, PAGE, SOFT, STEEL } from './sheet'
 import type { Sheet } from './sheet'
-import { drawMark } from './marks'
+import { drawVerdict, verdictWidth } from './marks'
 
 const ORIGIN_COLOURS = { design: INK, rotorSide: COPPER, statorSide: STEEL, turn: CAUTION, other: SOFT } as const
 const ORIGIN_DASHES: Record<Origin, number[] | undefined> = { design: undefined, rotorSide: [3, 1], statorSide: [1.2, 1], turn: [4, 1, 1, 1], other: [0.6, 1.2] }
@@ -17,7 +17,7 @@ export const failing = (sample: PaperSample): boolean => sample.verdict === 'fai
 
 /** Share of its limit that a motor's worst characteristic takes. */
 function worstShare(sample: PaperSample): number {
-  return Math.max(0, ...sample.characteristics.flatMap(row => row.value !== null && row.upper !== null && row.upper > 0 ? [row.value / row.upper] : []))
+  return Math.max(0, ...sample.characteristics.flatMap(row => row.value === null ? [] : [...(row.upper !== null && row.upper > 0 ? [row.value / row.upper] : []), ...(row.lower !== null && row.lower > 0 && row.value > 0 ? [row.lower / row.value] : [])]))
 }
 
 /** The motor that a paper shows large: failing before conforming, then nearest to or farthest beyond a limit. */
@@ -33,70 +33,116 @@ export function drawRing(sheet: Sheet, sample: PaperSample, limit: number | null
   if (geometry.band) sheet.path(geometry.band, x, top, { fill: BAND })
   sheet.path(geometry.zeroCircle, x, top, { stroke: LINE, width: 0.4 })
   sheet.path(geometry.trace, x, top, { stroke: large ? INK : SOFT, width: large ? 0.7 : 0.35 })
-  sheet.path(geometry.beyond, x, top, { stroke: FAIL, width: large ? 2 : 1 })
+  sheet.path(geometry.beyond, x, top, { stroke: FAIL, width: large ? 1.8 : 0.9 })
   if (geometry.cutEdge) sheet.path(geometry.cutEdge, x, top, { stroke: FAIL, width: 0.4, dash: [2, 1.5] })
 }
 
+const RING_SIDE = 176
+/** The comb's geometry is made for a screen; on paper its labels are smaller. */
+const COMB_SCALE = 1.5
+
 /** Large ring with its figure in the middle, and the comb beside it. */
 export function drawWorst(sheet: Sheet, record: PaperRecord, sample: PaperSample): void {
-  const size = 168
-  sheet.need(size + 26)
-  const top = sheet.y - 2
-  drawRing(sheet, sample, limitOf(record), PAGE.left, top, size)
-  const peak = sample.characteristics.find(row => row.key === 'cogging.peakToPeak')
-  if (peak?.value != null) {
-    const figure = formatQuantity(peak.value, 'N·m')
-    const middle = PAGE.left + size / 2
-    sheet.text(figure.text, middle, top - size / 2 + 1, { size: 17, face: 'monoBold', colour: failing(sample) ? FAIL : INK, align: 'centre' })
-    sheet.text(`${figure.unit} peak to peak`, middle, top - size / 2 - 10, { size: 7, colour: SOFT, align: 'centre' })
-    if (peak.upper !== null) sheet.text(`limit ${joinQuantity(formatQuantity(peak.upper, 'N·m').text, formatQuantity(peak.upper, 'N·m').unit)}`, middle, top - size / 2 - 19, { size: 7, colour: SOFT, align: 'centre' })
-  }
-  drawComb(sheet, record, sample, PAGE.left + size + 18, top, PAGE.right - PAGE.left - size - 18, size)
-  sheet.y = top - size - 6
+  sheet.need(RING_SIDE + 18)
+  const left = PAGE.left + 18
+  const top = sheet.y - 9
+  drawRing(sheet, sample, limitOf(record), left, top, RING_SIDE)
+  drawRingText(sheet, sample, left + RING_SIDE / 2, top - RING_SIDE / 2)
+  const combX = left + RING_SIDE + 24
+  drawComb(sheet, record, sample, { x: combX, top, width: PAGE.right - combX, height: RING_SIDE })
+  sheet.y = top - RING_SIDE - 7
 }
 
-function drawComb(sheet: Sheet, record: PaperRecord, sample: PaperSample, x: number, top: number, width: number, height: number): void {
+function drawRingText(sheet: Sheet, sample: PaperSample, x: number, y: number): void {
+  const outer = RING_SIDE / 2
+  const labels = [['0°', 0, outer - 0.5, 'centre'], ['90°', outer + 1, -2.2, 'left'], ['180°', 0, -outer - 5, 'centre'], ['270°', -outer - 1, -2.2, 'right']] as const
+  for (const [text, dx, dy, align] of labels) sheet.text(text, x + dx, y + dy, { size: 6.4, face: 'mono', colour: SOFT, align })
+  const peak = sample.characteristics.find(row => row.key === 'cogging.peakToPeak')
+  if (peak?.value == null) return
+  const { value, upper, unit } = formatRow(peak)
+  const bad = peak.verdict === 'fail' || peak.verdict === 'conditional-fail'
+  sheet.text(value!, x, y + 3, { size: 17, face: 'monoBold', colour: bad ? FAIL : INK, align: 'centre' })
+  sheet.text(`${unit} peak to peak`, x, y - 8, { size: 7, colour: SOFT, align: 'centre' })
+  if (upper !== null) sheet.text(`limit ${joinQuantity(upper, unit)}`, x, y - 17, { size: 7, colour: SOFT, align: 'centre' })
+}
+
+interface Box { x: number; top: number; width: number; height: number }
+
+function drawComb(sheet: Sheet, record: PaperRecord, sample: PaperSample, box: Box): void {
   const limits = record.sheet.content.limits.flatMap((limit) => {
     const order = /^order\.(\d+)$/.exec(limit.key)?.[1]
     return order && limit.upper !== null && limit.unit === 'N·m' ? [{ order: Number(order), upperNm: limit.upper }] : []
   })
-  const geometry = combGeometry({ orders: sample.orders, limits, highestOrder: sample.cogging!.cosNm.length, width, height: height - 24 })
-  sheet.text(`Amplitude by order, ${geometry.unit}`, x + geometry.plot.left, top - 6, { size: 8, face: 'bold' })
-  const base = top - 12
+  const geometry = combGeometry({ orders: sample.orders, limits, highestOrder: sample.cogging!.cosNm.length, width: box.width * COMB_SCALE, height: (box.height - 22) * COMB_SCALE })
+  const x = (value: number) => box.x + value / COMB_SCALE
+  const y = (value: number) => box.top - 10 - value / COMB_SCALE
+  const { left, right, bottom } = geometry.plot
+  sheet.text(`Amplitude by order, ${geometry.unit}`, x(left), box.top - 6, { size: 8, face: 'bold' })
+  const decimals = Math.max(...geometry.yTicks.map(tick => tick.label.split('.')[1]?.length ?? 0))
   for (const tick of geometry.yTicks) {
-    sheet.rule(base - tick.at, x + geometry.plot.left, x + geometry.plot.right, LINE, 0.5)
-    sheet.text(tick.label, x + geometry.plot.left - 5, base - tick.at - 2.4, { size: 7, face: 'mono', colour: SOFT, align: 'right' })
+    sheet.rule(y(tick.at), x(left), x(right), LINE, 0.5)
+    sheet.text(Number(tick.label).toFixed(decimals), x(left) - 5, y(tick.at) - 2.4, { size: 7, face: 'mono', colour: SOFT, align: 'right' })
   }
   for (const tooth of geometry.teeth) {
-    sheet.path(`M${tooth.x} ${geometry.plot.bottom}L${tooth.x} ${tooth.y}`, x, base, { stroke: tooth.over ? FAIL : ORIGIN_COLOURS[tooth.origin], width: 1.9, dash: ORIGIN_DASHES[tooth.origin] })
+    sheet.line(x(tooth.x), y(bottom), x(tooth.x), y(tooth.y), { colour: tooth.over ? FAIL : ORIGIN_COLOURS[tooth.origin], width: 1.9, dash: ORIGIN_DASHES[tooth.origin] })
     if (!tooth.labelled) continue
-    sheet.text(String(tooth.order), x + tooth.x, base - geometry.plot.bottom - 9, { size: 7, face: 'mono', align: 'centre' })
-    sheet.text(tooth.letter, x + tooth.x, base - geometry.plot.bottom - 18, { size: 7, face: 'monoBold', colour: ORIGIN_COLOURS[tooth.origin], align: 'centre' })
+    sheet.text(String(tooth.order), x(tooth.x), y(bottom) - 9, { size: 7, face: tooth.over ? 'monoBold' : 'mono', colour: tooth.over ? FAIL : INK, align: 'centre' })
+    sheet.text(tooth.letter, x(tooth.x), y(bottom) - 17.5, { size: 7, face: 'monoBold', colour: ORIGIN_COLOURS[tooth.origin], align: 'centre' })
   }
-  for (const notch of geometry.notches) sheet.path(`M${notch.x - 5} ${notch.y}L${notch.x + 5} ${notch.y}`, x, base, { stroke: FAIL, width: 1.4 })
-  sheet.text('D design · R rotor side · S stator side · T once or twice a turn · O other · bar: limit', x + geometry.plot.left, top - height + 1, { size: 6.6, colour: SOFT })
+  for (const notch of geometry.notches) sheet.line(x(notch.x) - 4.5, y(notch.y), x(notch.x) + 4.5, y(notch.y), { colour: FAIL, width: 1.4 })
+  drawCombLegend(sheet, x(left), box.top - box.height + 2, geometry.notches.length > 0)
 }
 
-const TILES_A_ROW = 10
+function drawCombLegend(sheet: Sheet, x: number, y: number, limited: boolean): void {
+  let at = x
+  for (const origin of Object.keys(ORIGIN_LETTERS) as Origin[]) {
+    sheet.text(ORIGIN_LETTERS[origin], at, y, { size: 6.8, face: 'monoBold', colour: ORIGIN_COLOURS[origin] })
+    sheet.text(ORIGIN_WORDS[origin], at + 6, y, { size: 6.8, colour: SOFT })
+    at += sheet.width(ORIGIN_WORDS[origin], { size: 6.8 }) + 15
+  }
+  if (!limited) return
+  sheet.line(at, y + 2.2, at + 8, y + 2.2, { colour: FAIL, width: 1.4 })
+  sheet.text('limit', at + 11, y, { size: 6.8, colour: SOFT })
+}
 
-/** Small rings of all motors, each with its serial and mark. */
+/** From this many motors on the tiles are smaller. */
+const MANY = 60
+
+/** Small rings of all motors, each with its serial, mark and word. */
 export function drawRosette(sheet: Sheet, record: PaperRecord): void {
-  const step = (PAGE.right - PAGE.left) / TILES_A_ROW
-  const size = step - 6
-  const height = size + 15
+  const tiles = record.samples.length > MANY ? 12 : 9
+  const step = (PAGE.right - PAGE.left) / tiles
+  const width = step - 4
+  const lines = Math.max(...record.samples.map(sample => nameLines(sheet, sample, width).length))
+  const tile = { width, height: width + 10.5 + 7 * lines }
+  const caption = `One turn of the shaft for each motor, clockwise from the index mark at the top.${limitOf(record) === null ? ' Each ring has its own scale.' : ' Shaded: the band of the peak-to-peak limit; thick and red: beyond it. All rings have the same scale.'}`
+  sheet.heading('All motors of the sample', 52 + tile.height)
+  sheet.paragraph(caption, { size: 7.6, colour: SOFT, after: 5 })
   record.samples.forEach((sample, index) => {
-    const column = index % TILES_A_ROW
+    const column = index % tiles
     if (column === 0) {
-      sheet.need(height + 2)
-      sheet.y -= height
+      sheet.need(tile.height + 4)
+      sheet.y -= tile.height + 4
     }
-    const x = PAGE.left + column * step
-    if (failing(sample)) sheet.page.drawRectangle({ x: x + 1, y: sheet.y - 1, width: step - 4, height: height - 3, color: FAIL_WASH, borderColor: FAIL, borderWidth: 0.8 })
-    if (sample.cogging) drawRing(sheet, sample, limitOf(record), x + 2, sheet.y + height - 5, size - 2)
-    const name = nameOf(sample)
-    const text = Math.min(6.4, 6.4 * (step - 15) / Math.max(1, sheet.width(name, { size: 6.4, face: 'mono' })))
-    drawMark(sheet, sample.verdict, x + 3, sheet.y + 3, 5)
-    sheet.text(name, x + 10, sheet.y + 3.4, { size: text, face: failing(sample) ? 'monoBold' : 'mono', colour: failing(sample) ? FAIL : INK })
+    drawTile(sheet, sample, limitOf(record), { x: PAGE.left + column * step + 2, top: sheet.y + tile.height, ...tile })
   })
-  sheet.y -= 6
+  sheet.y -= 4
+}
+
+const TILE_NAME = 6.2
+
+/** A serial is never shrunk until it cannot be read; a long one takes more lines. */
+const nameLines = (sheet: Sheet, sample: PaperSample, width: number): string[] => sheet.wrap(nameOf(sample), width - 3, { size: TILE_NAME, face: failing(sample) ? 'monoBold' : 'mono' })
+
+function drawTile(sheet: Sheet, sample: PaperSample, limit: number | null, { x, top, width, height }: Box): void {
+  const bad = failing(sample)
+  if (bad) sheet.page.drawRectangle({ x, y: top - height, width, height, color: FAIL_WASH, borderColor: FAIL, borderWidth: 0.8 })
+  const ring = width - 5
+  if (sample.cogging) drawRing(sheet, sample, limit, x + 2.5, top - 2.5, ring)
+  else sheet.text('not measured', x + width / 2, top - width / 2, { size: 5.6, colour: SOFT, align: 'centre' })
+  const style = { size: TILE_NAME, face: bad ? 'monoBold' : 'mono', colour: bad ? FAIL : INK, align: 'centre' } as const
+  nameLines(sheet, sample, width).forEach((line, index) => sheet.text(line, x + width / 2, top - width - 5.4 - 7 * index, style))
+  if (!sample.cogging) return
+  const word = verdictWidth(sheet, sample.verdict, 5.8)
+  drawVerdict(sheet, sample.verdict, x + (width - word) / 2, top - height + 3.4, { size: 5.8 })
 }

@@ -32,16 +32,21 @@ export class Sheet {
   y = 0
   /** Drawn at the top of every further page, such as a table's head. */
   onNewPage: (() => void) | null = null
+  /** Whether a sign was met that no face holds; it is drawn as □. */
+  lacksSigns = false
 
-  private constructor(readonly document: PDFDocument, private readonly faces: Record<Face | 'fallback', PDFFont>, private readonly known: Record<Face, Set<number>>) {}
+  /** Widths at size 1 by face and text: measuring is the slow part. */
+  private readonly widths = new Map<string, number>()
+
+  private constructor(readonly document: PDFDocument, private readonly faces: Record<Face | 'fallback', PDFFont>, private readonly known: Record<Face | 'fallback', Set<number>>) {}
 
   static async create(fonts: PaperFonts): Promise<Sheet> {
     const document = await PDFDocument.create({ updateMetadata: false })
     document.registerFontkit(fontkit)
     const embed = (bytes: Uint8Array) => document.embedFont(bytes, { subset: true })
     const faces = { sans: await embed(fonts.sans), bold: await embed(fonts.sansSemiBold), mono: await embed(fonts.mono), monoBold: await embed(fonts.monoSemiBold), fallback: await embed(fonts.fallback) }
-    const known = (face: Face) => new Set(faces[face].getCharacterSet())
-    const sheet = new Sheet(document, faces, { sans: known('sans'), bold: known('bold'), mono: known('mono'), monoBold: known('monoBold') })
+    const known = (face: Face | 'fallback') => new Set(faces[face].getCharacterSet())
+    const sheet = new Sheet(document, faces, { sans: known('sans'), bold: known('bold'), mono: known('mono'), monoBold: known('monoBold'), fallback: known('fallback') })
     sheet.addPage()
     return sheet
   }
@@ -60,8 +65,12 @@ export class Sheet {
   /** Text in runs of one font each. */
   private runs(text: string, face: Face): { text: string; font: PDFFont }[] {
     const runs: { text: string; font: PDFFont }[] = []
-    for (const sign of text.normalize('NFC').replaceAll(/\s/g, match => match === '\u00A0' ? '\u00A0' : ' ')) {
-      const font = this.known[face].has(sign.codePointAt(0)!) ? this.faces[face] : this.faces.fallback
+    for (const wanted of text.normalize('NFC').replaceAll(/\s/g, match => match === '\u00A0' ? '\u00A0' : ' ')) {
+      const code = wanted.codePointAt(0)!
+      const font = this.known[face].has(code) ? this.faces[face] : this.faces.fallback
+      const lacking = font === this.faces.fallback && !this.known.fallback.has(code)
+      if (lacking) this.lacksSigns = true
+      const sign = lacking ? '\u25A1' : wanted
       const last = runs.at(-1)
       if (last?.font === font) last.text += sign
       else runs.push({ text: sign, font })
@@ -70,16 +79,22 @@ export class Sheet {
   }
 
   width(text: string, { size = 9, face = 'sans' }: TextStyle = {}): number {
-    return this.runs(text, face).reduce((sum, run) => sum + run.font.widthOfTextAtSize(run.text, size), 0)
+    const key = `${face} ${text}`
+    const known = this.widths.get(key)
+    if (known !== undefined) return size * known
+    const width = this.runs(text, face).reduce((sum, run) => sum + run.font.widthOfTextAtSize(run.text, 1), 0)
+    this.widths.set(key, width)
+    return size * width
   }
 
   text(text: string, x: number, y: number, style: TextStyle = {}): void {
     const { size = 9, face = 'sans', colour = INK, align = 'left' } = style
     const total = this.width(text, style)
     let at = align === 'right' ? x - total : align === 'centre' ? x - total / 2 : x
-    for (const run of this.runs(text, face)) {
+    const runs = this.runs(text, face)
+    for (const run of runs) {
       this.page.drawText(run.text, { x: at, y, size, font: run.font, color: colour })
-      at += run.font.widthOfTextAtSize(run.text, size)
+      if (runs.length > 1) at += run.font.widthOfTextAtSize(run.text, size)
     }
   }
 
@@ -104,8 +119,11 @@ export class Sheet {
     let piece = ''
     for (const sign of word) {
       if (this.width(piece + sign, style) > width) {
-        pieces.push(piece)
-        piece = ''
+        // Rather after a hyphen or the like than anywhere.
+        const joint = Math.max(...['-', '_', '/', '.'].map(each => piece.lastIndexOf(each))) + 1
+        const cut = joint > piece.length / 3 ? joint : piece.length
+        pieces.push(piece.slice(0, cut))
+        piece = piece.slice(cut)
       }
       piece += sign
     }
@@ -116,23 +134,36 @@ export class Sheet {
   paragraph(text: string, style: TextStyle & { x?: number; width?: number; leading?: number; after?: number } = {}): void {
     const { x = PAGE.left, width = PAGE.right - PAGE.left, size = 9, after = 5 } = style
     const leading = style.leading ?? size * 1.38
-    for (const line of this.wrap(text, width, style)) {
-      this.need(leading)
+    const lines = this.wrap(text, width, style)
+    // A short paragraph stays whole; a long one leaves at least two lines on either page.
+    for (const [index, line] of lines.entries()) {
+      const together = lines.length <= 4 && index === 0 ? lines.length : index === 0 || index === lines.length - 2 ? 2 : 1
+      this.need(leading * together)
       this.y -= leading
       this.text(line, x, this.y + (leading - size) * 0.45, style)
     }
     this.y -= after
   }
 
-  heading(text: string): void {
-    this.need(44)
-    this.y -= 21
-    this.text(text, PAGE.left, this.y, { size: 11.5, face: 'bold' })
-    this.y -= 6
+  /** A heading that stays with what follows: `keep` is the height of both. */
+  heading(text: string, keep = 46): void {
+    this.need(keep)
+    const lines = this.wrap(text, PAGE.right - PAGE.left, { size: 11.5, face: 'bold' })
+    this.y -= this.y === PAGE.top ? 9 : 21
+    lines.forEach((line, index) => this.text(line, PAGE.left, this.y - 14 * index, { size: 11.5, face: 'bold' }))
+    this.y -= 14 * (lines.length - 1) + 6
   }
 
   rule(y = this.y, x1: number = PAGE.left, x2: number = PAGE.right, colour = LINE, thickness = 0.7): void {
     this.page.drawLine({ start: { x: x1, y }, end: { x: x2, y }, color: colour, thickness })
+  }
+
+  line(x1: number, y1: number, x2: number, y2: number, style: { colour: RGB; width: number; dash?: number[] }): void {
+    this.page.drawLine({ start: { x: x1, y: y1 }, end: { x: x2, y: y2 }, color: style.colour, thickness: style.width, dashArray: style.dash })
+  }
+
+  circle(x: number, y: number, radius: number, style: { fill?: RGB; stroke?: RGB; width?: number }): void {
+    this.page.drawCircle({ x, y, size: radius, color: style.fill, borderColor: style.stroke, borderWidth: style.stroke ? style.width ?? 0.7 : 0 })
   }
 
   /** A path of a figure whose origin is at the top left, placed with that corner at (x, y). */
