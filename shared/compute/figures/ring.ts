@@ -35,6 +35,8 @@ export interface RingGeometry {
   beyond: string
   /** How many strokes `beyond` has. */
   placesBeyond: number
+  /** How far the drawing goes from the zero circle, as a share of its radius, at most 0.3. */
+  reach: number
   /** True when a part lies so far out that the drawing is cut there. */
   cut: boolean
   /** Circles at which the drawing is cut; null when it is not. */
@@ -76,6 +78,7 @@ export function ringGeometry(input: RingInput): RingGeometry {
   const cut = gain * largest > LARGEST_SHARE
   return {
     size, centre, radius, cut,
+    reach: Math.min(LARGEST_SHARE, gain * largest),
     zeroCircle: circlePath(centre, centre, radius),
     band: edges && annulusPath(centre, centre, radiusAt(edges.high), radiusAt(edges.low)),
     trace: polyline(kept.map(place), true, decimals),

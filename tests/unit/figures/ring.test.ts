@@ -102,6 +102,8 @@ describe('ringGeometry', () => {
     const at = (peakNm: number) => ringGeometry({ values: turn(peakNm, 12), limitPeakToPeakNm: LIMIT, size: 360 })
     const edge = 0.3 / 0.16 * LIMIT / 2
     expect(at(0.999 * edge)).toMatchObject({ cut: false, cutEdge: null })
+    expect(at(0.999 * edge).reach).toBeCloseTo(0.2997, 6)
+    expect(at(2 * edge).reach).toBe(0.3)
     expect(at(1.001 * edge).cut).toBe(true)
     expect(points(at(1.001 * edge).cutEdge!)).not.toHaveLength(0)
   })
