@@ -78,7 +78,14 @@ async function recomputeOne(worker: Worker, index: number, record: PaperRecord, 
     if (await sha256(bytes) !== file.sha256) return [`${name}: the raw file ${file.name} is not the one the certificate names.`]
     files.push({ name: file.name, bytes })
   }
-  const job: RecomputeJob = { index, files, settings: settingsOf(record, sample), content: JSON.parse(JSON.stringify(record.sheet.content)) }
+  let settings: AnalysisSettings
+  try {
+    settings = settingsOf(record, sample)
+  }
+  catch (error) {
+    return [`${name}: ${error instanceof Error ? error.message : String(error)}.`]
+  }
+  const job: RecomputeJob = { index, files, settings, content: JSON.parse(JSON.stringify(record.sheet.content)) }
   const reply = await new Promise<RecomputeReply>((resolve, reject) => {
     worker.onmessage = (event: MessageEvent<RecomputeReply>) => resolve(event.data)
     worker.onerror = event => reject(new Error(event.message))
@@ -89,7 +96,8 @@ async function recomputeOne(worker: Worker, index: number, record: PaperRecord, 
 
 /** The same settings that the server analysed with, from the record alone. */
 function settingsOf(record: PaperRecord, sample: PaperSample): AnalysisSettings {
-  const rig = record.rigs.find(each => each.code === sample.rig)!
+  const rig = record.rigs.find(each => each.code === sample.rig && (!sample.calibration || each.calibration.certificateNumber === sample.calibration))
+  if (!rig) throw new RangeError(`the certificate does not hold rig ${sample.rig ?? 'not stated'} with its calibration`)
   const content = record.sheet.content
   const orders = content.limits.flatMap(limit => /^order\.(\d+)$/.exec(limit.key)?.[1] ?? []).map(Number).sort((a, b) => a - b)
   return JSON.parse(JSON.stringify({

@@ -20,6 +20,8 @@ const sampleSchema = z.object({
   measuredAt: text.nullable(),
   measuredBy: text.nullable(),
   rig: text.nullable(),
+  /** Calibration certificate that covered this measurement; a rig may be calibrated anew within a lot. */
+  calibration: text.nullable().optional(),
   engineVersion: text.nullable(),
   /** Columns as the rig's recipe named them; null: read from the file's own header. */
   recipe: json<ColumnRecipe>().nullable(),

@@ -21,7 +21,9 @@ interface Subject { supplierId: number; partId: number }
 /** The individuals chart of one supplier × part × characteristic, with everything that can be chosen instead. */
 export function getDrift(context: Context, query: z.output<typeof driftQuerySchema>): DriftAnswer {
   const choices = listChoices(context)
-  const choice = choices.find(row => row.supplier === query.supplier && row.part === query.part) ?? (query.supplier || query.part ? undefined : choices[0])
+  const asked = query.supplier !== '' || query.part !== ''
+  // Without a wish, the first of which something was measured.
+  const choice = asked ? choices.find(row => row.supplier === query.supplier && row.part === query.part) : choices.find(row => listKeys(context, row).length > 0) ?? choices[0]
   if (!choice) return { choices: choices.map(publicChoice), keys: [], chart: null }
   const keys = listKeys(context, choice)
   const key = keys.includes(query.key) ? query.key : keys[0]

@@ -66,9 +66,10 @@ function samplesOf(db: Db, lotId: number, counted: Counted, nameOf: (id: number 
   const files = db.select({ measurementId: measurementFiles.measurementId, name: measurementFiles.name, sha256: rawFiles.sha256, size: rawFiles.size }).from(measurementFiles)
     .innerJoin(rawFiles, eq(rawFiles.sha256, measurementFiles.sha256)).innerJoin(measurements, eq(measurements.id, measurementFiles.measurementId)).where(eq(measurements.lotId, lotId)).orderBy(asc(measurementFiles.ordinal)).all()
   const rigCodes = new Map(db.select({ id: rigs.id, code: rigs.code }).from(rigs).all().map(rig => [rig.id, rig.code]))
+  const certificates = new Map(db.select({ id: calibrations.id, number: calibrations.certificateNumber }).from(calibrations).all().map(row => [row.id, row.number]))
   return counted.map(({ sample, measurement }) => ({
     drawOrder: sample.drawOrder, position: sample.position, serial: sample.serial, verdict: measurement?.verdict ?? null, attempts: attempts.get(sample.id) ?? 0, attempt: measurement?.attempt ?? null,
-    measuredAt: measurement?.measuredAt ?? null, measuredBy: measurement ? nameOf(measurement.measuredById) : null, rig: measurement ? rigCodes.get(measurement.rigId) ?? null : null, engineVersion: measurement?.engineVersion ?? null,
+    measuredAt: measurement?.measuredAt ?? null, measuredBy: measurement ? nameOf(measurement.measuredById) : null, rig: measurement ? rigCodes.get(measurement.rigId) ?? null : null, calibration: measurement ? certificates.get(measurement.calibrationId) ?? null : null, engineVersion: measurement?.engineVersion ?? null,
     recipe: measurement && measurement.result.recipe.version > 0 ? measurement.result.recipe : null,
     files: files.filter(file => file.measurementId === measurement?.id).map(({ name, sha256, size }) => ({ name, sha256, size })),
     characteristics: measurement?.judgement.characteristics ?? [], warnings: measurement?.result.warnings ?? [], orders: measurement?.result.orders ?? [],
