@@ -68,8 +68,10 @@ describe('a day of each role', () => {
     await page.goto('/returns')
     await page.getByRole('link', { name: known.nonconformance }).first().click()
     await page.waitForURL(`**/returns/${known.nonconformance}`)
+    const region = page.getByRole('region', { name: 'Decide what happens to the lot' })
+    await page.waitForLoadState('networkidle')
     await page.getByLabel(/Use under concession/).check()
-    await page.getByLabel('Reason, told to the supplier').fill('Used in the training arms only')
+    await region.getByLabel('Reason, told to the supplier').fill('Used in the training arms only')
     await page.getByLabel('Your password signs the concession').fill('not the password')
     await page.getByRole('button', { name: 'Sign the concession' }).click()
     await page.getByText('This is not your password.').waitFor()
@@ -86,6 +88,7 @@ describe('a day of each role', () => {
     const { page } = visitor
     await signIn(page, 'tobin@kestrelfold.example', DEMO_PASSWORD)
     await page.goto('/receive')
+    await page.waitForLoadState('networkidle')
     await page.getByLabel('Supplier', { exact: true }).selectOption('NORRHAVEN')
     await page.getByLabel('Part', { exact: true }).selectOption('KF-2350-A')
     await page.getByLabel('Lot number on the label').fill('NS-WITHOUT-LIST')
@@ -99,6 +102,7 @@ describe('a day of each role', () => {
     await page.getByText('A-1', { exact: true }).first().waitFor()
     // The same lot again is refused with the way to the first receipt.
     await page.goto('/receive')
+    await page.waitForLoadState('networkidle')
     await page.getByLabel('Supplier', { exact: true }).selectOption('NORRHAVEN')
     await page.getByLabel('Part', { exact: true }).selectOption('KF-2350-A')
     await page.getByLabel('Lot number on the label').fill('NS-WITHOUT-LIST')
